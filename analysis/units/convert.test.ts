@@ -1,9 +1,15 @@
-import { UcumLhcUtils } from '@lhncbc/ucum-lhc';
+import { createRequire } from 'node:module';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { convert, sameDimension } from './convert.ts';
 import { DomainError, UnitError } from './errors.ts';
 
+// The package has no types; what is called of it is spelled here.
+const { UcumLhcUtils } = createRequire(import.meta.url)('@lhncbc/ucum-lhc') as {
+  UcumLhcUtils: {
+    getInstance(): { convertUnitTo(from: string, value: number, to: string): { toVal: number | null } };
+  };
+};
 const pressures = ['mm[Hg]', 'kPa', 'Pa', 'cm[H2O]', 'dyn/cm2'];
 
 describe('convert', () => {
