@@ -34,11 +34,11 @@ module.exports = {
       from: { path: '^schemas/', pathNot: '(\\.test\\.ts$|^schemas/expressions/)' },
       to: { path: 'node_modules', pathNot: 'node_modules/(@casl/ability|json-schema-to-ts)' },
     },
-    only('server', '^backend/(http|database|config|jobs)/', '^(schemas|backend/(http|database|config|jobs))/'),
+    only('server', '^backend/(http|database|config|jobs|services)/', '^(schemas|backend/(http|database|config|jobs|services))/'),
     only(
       'module',
       '^backend/modules/([^/]+)/',
-      '^(schemas|analysis|backend/(http|database|config|jobs)|backend/modules/$1)/|^backend/modules/[^/]+/(index|[^/]+\\.entity)\\.ts$',
+      '^(schemas|analysis|backend/(http|database|config|jobs|services)|backend/modules/$1)/|^backend/modules/[^/]+/(index|[^/]+\\.entity)\\.ts$',
     ),
     only('shared', '^frontend/(components|forms|lib)/', '^(schemas|analysis|frontend/(components|forms|lib))/'),
     only(

@@ -1,0 +1,11 @@
+import type { Deps } from '#backend/http/deps.ts';
+import type { RouteTable } from '#backend/http/route.ts';
+import { declareSessionRoutes } from './session.routes.ts';
+
+export { demoAccounts } from './demo-accounts.ts';
+export { hashPassword } from './password.ts';
+
+/** Routes of accounts: sessions, people, memberships, invitations. */
+export function declareAccountRoutes(table: RouteTable, deps: Deps): void {
+  declareSessionRoutes(table, deps);
+}

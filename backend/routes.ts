@@ -1,0 +1,8 @@
+import type { Deps } from './http/deps.ts';
+import type { RouteTable } from './http/route.ts';
+import { declareAccountRoutes } from './modules/accounts/index.ts';
+
+/** Every module declares its routes here, in the order of their nouns. */
+export function declareRoutes(table: RouteTable, deps: Deps): void {
+  declareAccountRoutes(table, deps);
+}

@@ -1,0 +1,191 @@
+import type { FromSchema } from 'json-schema-to-ts';
+import { roles } from '../vocabulary/roles.ts';
+
+const email = { type: 'string', format: 'email', maxLength: 254 } as const;
+const uuid = { type: 'string', format: 'uuid' } as const;
+const object = { type: 'object', additionalProperties: false } as const;
+
+export const signInBody = {
+  ...object,
+  required: ['email', 'password'],
+  properties: { email: { type: 'string', maxLength: 254 }, password: { type: 'string', maxLength: 1024 } },
+} as const;
+export type SignInBody = FromSchema<typeof signInBody>;
+
+export const actingBody = {
+  ...object,
+  required: ['membershipId'],
+  properties: { membershipId: uuid },
+} as const;
+export type ActingBody = FromSchema<typeof actingBody>;
+
+export const acceptInvitationBody = {
+  ...object,
+  required: ['password', 'acceptDeclaration'],
+  properties: { password: { type: 'string', maxLength: 1024 }, acceptDeclaration: { const: true } },
+} as const;
+export type AcceptInvitationBody = FromSchema<typeof acceptInvitationBody>;
+
+export const membershipDto = {
+  ...object,
+  required: ['id', 'studyCode', 'studyName', 'role', 'siteIds', 'unblinded'],
+  properties: {
+    id: uuid,
+    studyCode: { type: ['string', 'null'] },
+    studyName: { type: ['string', 'null'] },
+    role: { enum: roles },
+    siteIds: { anyOf: [{ type: 'null' }, { type: 'array', items: uuid }] },
+    unblinded: { type: 'boolean' },
+  },
+} as const;
+export type MembershipDto = FromSchema<typeof membershipDto>;
+
+export const sessionDto = {
+  ...object,
+  required: ['person', 'memberships', 'acting', 'rules'],
+  properties: {
+    person: {
+      ...object,
+      required: ['id', 'name', 'email'],
+      properties: { id: uuid, name: { type: 'string' }, email: { type: 'string' } },
+    },
+    memberships: { type: 'array', items: membershipDto },
+    acting: {
+      anyOf: [
+        { type: 'null' },
+        {
+          ...object,
+          required: ['membershipId', 'studyCode', 'studyName', 'studyState', 'role', 'sites', 'unblinded'],
+          properties: {
+            membershipId: uuid,
+            studyCode: { type: ['string', 'null'] },
+            studyName: { type: ['string', 'null'] },
+            studyState: { type: ['string', 'null'] },
+            role: { enum: roles },
+            /** The sites one may act at, all of the study's when not limited. */
+            sites: {
+              type: 'array',
+              items: {
+                ...object,
+                required: ['id', 'code', 'name', 'timeZone'],
+                properties: {
+                  id: uuid,
+                  code: { type: 'string' },
+                  name: { type: 'string' },
+                  timeZone: { type: 'string' },
+                },
+              },
+            },
+            unblinded: { type: 'boolean' },
+          },
+        },
+      ],
+    },
+    /** Packed rules of the ability acted with, the same that the server asks. */
+    rules: { type: 'array' },
+  },
+} as const;
+
+export interface SessionDto {
+  person: { id: string; name: string; email: string };
+  memberships: MembershipDto[];
+  acting: {
+    membershipId: string;
+    studyCode: string | null;
+    studyName: string | null;
+    studyState: string | null;
+    role: (typeof roles)[number];
+    sites: { id: string; code: string; name: string; timeZone: string }[];
+    unblinded: boolean;
+  } | null;
+  rules: unknown[];
+}
+
+export const invitePersonBody = {
+  ...object,
+  required: ['email', 'name'],
+  properties: {
+    email,
+    name: { type: 'string', minLength: 1, maxLength: 120, pattern: '^[^\\u0000-\\u001f\\u007f]+$' },
+  },
+} as const;
+export type InvitePersonBody = FromSchema<typeof invitePersonBody>;
+
+export const grantMembershipBody = {
+  ...object,
+  required: ['personId', 'studyCode', 'role', 'siteIds', 'unblinded'],
+  properties: {
+    personId: uuid,
+    studyCode: { type: 'string', maxLength: 40 },
+    role: { enum: roles.filter((role) => role !== 'administrator') },
+    siteIds: { anyOf: [{ type: 'null' }, { type: 'array', items: uuid, minItems: 1 }] },
+    unblinded: { type: 'boolean' },
+  },
+} as const;
+export interface GrantMembershipBody {
+  personId: string;
+  studyCode: string;
+  role: Exclude<(typeof roles)[number], 'administrator'>;
+  siteIds: string[] | null;
+  unblinded: boolean;
+}
+
+export const reasonBody = {
+  ...object,
+  required: ['reason'],
+  properties: { reason: { type: 'string', minLength: 3, maxLength: 2000, pattern: '\\S.*\\S' } },
+} as const;
+export type ReasonBody = FromSchema<typeof reasonBody>;
+
+export const personDto = {
+  ...object,
+  required: ['id', 'name', 'email', 'status', 'revision', 'memberships'],
+  properties: {
+    id: uuid,
+    name: { type: 'string' },
+    email: { type: 'string' },
+    status: { enum: ['invited', 'active', 'deactivated'] },
+    revision: { type: 'integer' },
+    memberships: { type: 'array', items: membershipDto },
+  },
+} as const;
+export interface PersonDto {
+  id: string;
+  name: string;
+  email: string;
+  status: 'invited' | 'active' | 'deactivated';
+  revision: number;
+  memberships: MembershipDto[];
+}
+
+export const statusDto = {
+  ...object,
+  required: ['version', 'demo'],
+  properties: {
+    version: { type: 'string' },
+    demo: {
+      anyOf: [
+        { type: 'null' },
+        {
+          ...object,
+          required: ['accounts'],
+          properties: {
+            accounts: {
+              type: 'array',
+              items: {
+                ...object,
+                required: ['email', 'password', 'name', 'roles'],
+                properties: {
+                  email: { type: 'string' },
+                  password: { type: 'string' },
+                  name: { type: 'string' },
+                  roles: { type: 'string' },
+                },
+              },
+            },
+          },
+        },
+      ],
+    },
+  },
+} as const;

@@ -1,0 +1,32 @@
+/** Problem slugs: a promise to callers, each with the title that never changes. */
+export const problems = {
+  'unreadable-body': 'The request could not be read',
+  'invalid-body': 'Some fields need attention',
+  'invalid-parameter': 'A part of the address is not valid',
+  'not-signed-in': 'You are not signed in',
+  'sign-in-refused': 'Sign-in was refused',
+  'try-again-later': 'Too many tries',
+  'password-wrong': 'The password is not right',
+  'password-too-weak': 'The password is too easy to guess',
+  'link-not-valid': 'This link is no longer valid',
+  'not-allowed': 'You may not do this here',
+  'not-found': 'This does not exist',
+  'cross-origin': 'The request came from another site',
+  'wrong-content-type': 'The content type is not accepted',
+  'too-large': 'The request is too large',
+  'revision-missing': 'Say which revision you saw',
+  'stale-revision': 'Someone changed this meanwhile',
+  'key-reused': 'This request key was used for something else',
+  'state-forbids': 'The present state does not allow this',
+  'study-locked': 'The study is locked',
+  'fields-refused': 'Some values were refused',
+  'already-exists': 'This exists already',
+  'instrument-not-valid': 'The instrument is not valid yet',
+  'protocol-not-valid': 'The protocol is not valid yet',
+  'plan-not-valid': 'The plan is not valid yet',
+  'file-not-accepted': 'The file is not accepted',
+  'integrity-broken': 'The stored file no longer matches its hash',
+  'internal-error': 'Something went wrong on our side',
+} as const satisfies Record<string, string>;
+
+export type ProblemSlug = keyof typeof problems;
