@@ -1,0 +1,56 @@
+import { createBrowserRouter } from 'react-router-dom';
+import { Skeleton } from '../components/states.tsx';
+import { ErrorPage, NotFoundPage } from './error-page.tsx';
+import { Frame } from './frame.tsx';
+import { HomePage } from './home-page.tsx';
+import { administrationPages, openPages, personPages, studyPages } from './routes.tsx';
+import { AdministrationIndex, AdministrationLayout, StudyLayout } from './study-layout.tsx';
+
+/** Layouts around the table of pages. Each layout has its own error page, so that a failed part leaves the frame. */
+export const createRouter = () =>
+  createBrowserRouter([
+    {
+      ErrorBoundary: ErrorPage,
+      HydrateFallback: Skeleton,
+      children: [
+        ...openPages,
+        {
+          Component: Frame,
+          children: [
+            {
+              ErrorBoundary: ErrorPage,
+              children: [
+                { index: true, Component: HomePage },
+                ...personPages,
+                {
+                  path: 'studies/:studyCode',
+                  Component: StudyLayout,
+                  children: [
+                    {
+                      ErrorBoundary: ErrorPage,
+                      children: [...studyPages, { path: '*', Component: NotFoundPage }],
+                    },
+                  ],
+                },
+                {
+                  path: 'administration',
+                  Component: AdministrationLayout,
+                  children: [
+                    {
+                      ErrorBoundary: ErrorPage,
+                      children: [
+                        { index: true, Component: AdministrationIndex },
+                        ...administrationPages,
+                        { path: '*', Component: NotFoundPage },
+                      ],
+                    },
+                  ],
+                },
+                { path: '*', Component: NotFoundPage },
+              ],
+            },
+          ],
+        },
+      ],
+    },
+  ]);

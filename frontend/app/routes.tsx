@@ -1,0 +1,36 @@
+import type { ComponentType } from 'react';
+import type { LoaderFunction, RouteObject } from 'react-router-dom';
+
+interface LoadedPage {
+  Component: ComponentType;
+  loader?: LoaderFunction;
+}
+
+/**
+ * A page: its address and where its module is. The module is fetched when the page is first opened.
+ * Give a loader beside the component to start the page's queries at once.
+ */
+const page = (path: string, load: () => Promise<LoadedPage>): RouteObject => ({ path, lazy: load });
+
+/** The pages of a study, below `/studies/:studyCode/`: one line a page, each a file in `frontend/pages`. */
+export const studyPages: RouteObject[] = [
+  page('now', async () => ({ Component: (await import('#frontend/pages/now-page.tsx')).NowPage })),
+];
+
+/** The administrator's pages, below `/administration/`. */
+export const administrationPages: RouteObject[] = [];
+
+/** Pages of a person, in no study: below `/`. */
+export const personPages: RouteObject[] = [
+  page('choose', async () => ({ Component: (await import('./choose-page.tsx')).ChoosePage })),
+  page('account', async () => ({ Component: (await import('./account-page.tsx')).AccountPage })),
+  page('help', async () => ({ Component: (await import('./help-page.tsx')).HelpPage })),
+];
+
+/** Pages for people who are not signed in. */
+export const openPages: RouteObject[] = [
+  page('sign-in', async () => ({ Component: (await import('./sign-in-page.tsx')).SignInPage })),
+  page('invitation/:token', async () => ({
+    Component: (await import('./invitation-page.tsx')).InvitationPage,
+  })),
+];

@@ -1,0 +1,56 @@
+import { useNavigate } from 'react-router-dom';
+import { roleNames } from '#schemas/vocabulary/roles.ts';
+import { Menu, menuLine } from '../components/menu.tsx';
+import { say } from '../lib/notices.ts';
+import { homeOf } from './home.ts';
+import { useActAs } from '../lib/session/sign-in.ts';
+import { useSession } from '../lib/session/session.ts';
+import { inWords } from '../components/error-summary.tsx';
+
+const look =
+  'rounded border border-band-edge bg-band-field px-3 py-1 text-sm text-chalk min-h-8 whitespace-nowrap hover:border-chalk-soft';
+
+/** Switches study and role; the band says which one holds. */
+export function StudyMenu() {
+  const { acting, memberships } = useSession();
+  const actAs = useActAs();
+  const navigate = useNavigate();
+  const here = acting ? (acting.studyCode ?? 'Administration') : 'Choose a study';
+  return (
+    <Menu label={here} name={`Study: ${here}. Change study or role`} buttonClassName={look}>
+      {(close) => (
+        <ul>
+          {memberships.map((membership) => {
+            const { membershipId, studyCode, role, sites } = membership;
+            const current = membershipId === acting?.membershipId;
+            return (
+              <li key={membershipId}>
+                <button
+                  type="button"
+                  className={menuLine}
+                  aria-current={current ? 'true' : undefined}
+                  onClick={() => {
+                    close();
+                    if (current) return;
+                    actAs.mutate(membershipId, {
+                      onSuccess: () => void navigate(homeOf(membership)),
+                      onError: (error) => say(inWords(error).detail, 'asks'),
+                    });
+                  }}
+                >
+                  <span className={current ? 'font-semibold text-soot' : undefined}>
+                    {studyCode ?? 'Administration'}
+                    {current && ' · acting now'}
+                  </span>
+                  <span className="text-ink-soft">
+                    {[roleNames[role], ...sites.map(({ name }) => name)].join(', ')}
+                  </span>
+                </button>
+              </li>
+            );
+          })}
+        </ul>
+      )}
+    </Menu>
+  );
+}
