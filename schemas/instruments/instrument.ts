@@ -49,7 +49,7 @@ export interface FieldSchema {
   minLength?: number;
   maxLength?: number;
   pattern?: string;
-  format?: 'date' | 'time' | 'date-time';
+  format?: 'date' | 'date-time';
   allOf?: FieldSchema[];
   anyOf?: FieldSchema[];
   oneOf?: FieldSchema[];
