@@ -1,7 +1,7 @@
 import { requireNotNegative, requirePositive } from '../units/require.ts';
 import { devianceTerm, stirlingError } from './log-gamma.ts';
 
-const logTwoPi = 1.8378770664093454836;
+const logTwoPi = 1.8378770664093456;
 
 /**
  * Regularised incomplete beta function I_x(a, b), with x and its complement given apart.

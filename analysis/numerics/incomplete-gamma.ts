@@ -1,7 +1,7 @@
 import { requireNotNegative, requirePositive } from '../units/require.ts';
 import { devianceTerm, stirlingError } from './log-gamma.ts';
 
-const logTwoPi = 1.8378770664093454836;
+const logTwoPi = 1.8378770664093456;
 
 /**
  * Regularised incomplete gamma functions P(a, x) (lower) and Q(a, x) (upper), each computed as itself in its tail.

@@ -1,6 +1,6 @@
 import { requirePositive } from '../units/require.ts';
 
-const halfLogTwoPi = 0.9189385332046727418;
+const halfLogTwoPi = 0.9189385332046728;
 
 /** Coefficients B₂ₖ/(2k(2k−1)) of Stirling's series, k = 1 … 8. */
 const stirlingCoefficients = [
