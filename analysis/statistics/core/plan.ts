@@ -93,11 +93,14 @@ export interface Plan {
 }
 
 /** The named fields of the plan, present. Errors: invalid_plan naming the first absent one. */
-export function required<Field extends keyof Plan>(
-  plan: Plan,
-  ...fields: Field[]
-): Required<Pick<Plan, Field>> {
-  const absent = fields.find((field) => plan[field] === undefined);
-  if (absent !== undefined) throw invalidPlan(`The plan needs "${absent}".`);
-  return plan as Required<Pick<Plan, Field>>;
+export function required<Field extends keyof Plan>(plan: Plan, ...fields: Field[]): PlanWith<Field> {
+  if (hasFields(plan, fields)) return plan;
+  throw invalidPlan(`The plan needs "${fields.find((field) => plan[field] === undefined)}".`);
+}
+
+/** A plan on which these fields are present. */
+type PlanWith<Field extends keyof Plan> = Plan & Required<Pick<Plan, Field>>;
+
+function hasFields<Field extends keyof Plan>(plan: Plan, fields: readonly Field[]): plan is PlanWith<Field> {
+  return fields.every((field) => plan[field] !== undefined);
 }
