@@ -6,7 +6,7 @@ import { isMissing, type EntryValue, type EntryValues } from './entry-values.ts'
 export interface EntryDocument {
   document: Record<string, unknown>;
   /** Pointer in the document → address, where they differ: a missing reading leaves no gap in a list. */
-  addressOf(documentPointer: string): string;
+  addressOf: (documentPointer: string) => string;
 }
 
 /**

@@ -85,7 +85,7 @@ function fieldSentence(
 
 function entrySentence({ keyword, params }: SchemaError): string {
   const extra = params.additionalProperty ?? params.unevaluatedProperty;
-  if (extra !== undefined) return `There is no field ${String(extra)}`;
+  if (typeof extra === 'string') return `There is no field ${extra}`;
   return `The values together do not fit the rule "${keyword}" of the instrument`;
 }
 
