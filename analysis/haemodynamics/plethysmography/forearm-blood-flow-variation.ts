@@ -1,4 +1,4 @@
-import { mean, standardDeviation } from '../summaries.ts';
+import { mean, standardDeviation } from '../../readings/summaries.ts';
 import { quantity } from '../../units/quantity.ts';
 import type { Quantity } from '../../units/quantity.ts';
 import { requireCount, requireEachPositive } from '../../units/require.ts';

@@ -1,4 +1,4 @@
-import { mean } from '../summaries.ts';
+import { mean } from '../../readings/summaries.ts';
 import { requireCount, requireTimeSeries } from '../../units/require.ts';
 
 export interface FittedLine {

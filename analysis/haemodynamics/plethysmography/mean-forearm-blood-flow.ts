@@ -1,4 +1,4 @@
-import { mean } from '../summaries.ts';
+import { mean } from '../../readings/summaries.ts';
 import { quantity } from '../../units/quantity.ts';
 import type { Quantity } from '../../units/quantity.ts';
 import { requireCount, requireEachPositive } from '../../units/require.ts';

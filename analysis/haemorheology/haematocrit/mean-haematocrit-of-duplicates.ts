@@ -1,4 +1,4 @@
-import { median } from '../../haemodynamics/summaries.ts';
+import { median } from '../../readings/summaries.ts';
 import { DomainError } from '../../units/errors.ts';
 import { quantity } from '../../units/quantity.ts';
 import type { Quantity } from '../../units/quantity.ts';
