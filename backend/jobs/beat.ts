@@ -9,18 +9,19 @@ export function keepBeating(
   everySeconds: number,
   onError: (error: unknown) => void,
 ) {
-  const beat = () => {
-    pool
+  const beat = async (): Promise<void> => {
+    await pool
       .query(
-        `insert into job_beat (job_id) values ($1) on conflict (job_id) do update set at = clock_timestamp()`,
+        'insert into job_beat (job_id) values ($1) on conflict (job_id) do update set at = clock_timestamp()',
         [jobId],
       )
       .catch(onError);
   };
-  beat();
-  const timer = setInterval(beat, everySeconds * 1000);
+  let last = beat();
+  const timer = setInterval(() => (last = beat()), everySeconds * 1000);
   return async () => {
     clearInterval(timer);
+    await last; // or it would be written after it was removed
     await pool.query('delete from job_beat where job_id = $1', [jobId]).catch(onError);
   };
 }
@@ -64,18 +65,22 @@ export async function failJob(
   await fail(name, id, { kind }, options);
 }
 
-export async function inTransaction<T>(pool: Pool, work: (client: PoolClient) => Promise<T>): Promise<T> {
+async function inTransaction<T>(pool: Pool, work: (client: PoolClient) => Promise<T>): Promise<T> {
   const client = await pool.connect();
   let broken: Error | undefined;
+  // A connection that breaks while it is ours says so outside any query, and unheard that would end the process.
+  const noteBroken = (error: Error) => (broken = error);
+  client.on('error', noteBroken);
   try {
     await client.query('begin');
     const result = await work(client);
     await client.query('commit');
     return result;
   } catch (error) {
-    await client.query('rollback').catch((failure: Error) => (broken = failure));
+    await client.query('rollback').catch(noteBroken);
     throw error;
   } finally {
+    client.off('error', noteBroken);
     client.release(broken);
   }
 }

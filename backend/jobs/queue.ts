@@ -23,7 +23,7 @@ export interface Queue {
   /** Begins to work on a queue, `parallel` jobs at a time in this process. */
   work<N extends QueueName>(name: N, handler: JobHandler<N>, options?: { parallel?: number }): void;
   /** Takes no new job, waits for running ones, and gives back what does not end in time. */
-  stop(): Promise<void>;
+  stop: () => Promise<void>;
 }
 
 /** Seconds. */

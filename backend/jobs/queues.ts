@@ -5,6 +5,7 @@
  */
 export interface JobData {
   'mail.send': { mailId: string };
+  tidy: Record<string, never>;
   dead: { jobKey?: string; mailId?: string };
 }
 
@@ -26,6 +27,7 @@ export const deadLetter = 'dead' satisfies QueueName;
 export const queues: Readonly<Record<QueueName, QueueOptions>> = {
   [deadLetter]: { retryLimit: 5, retryDelay: 5, retryBackoff: true },
   // Doubling from half a minute spans most of a day: a mail server that is down overnight loses nothing.
+  tidy: { retryLimit: 2, retryDelay: 60, retryBackoff: false, cron: '17 3 * * *' },
   'mail.send': { retryLimit: 10, retryDelay: 30, retryBackoff: true },
 };
 

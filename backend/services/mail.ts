@@ -11,8 +11,8 @@ export interface Mail {
 
 export interface Mailer {
   /** Resolves once the mail server has taken the message. */
-  sendMail(mail: Mail): Promise<void>;
-  close(): void;
+  sendMail: (mail: Mail) => Promise<void>;
+  close: () => void;
 }
 
 /** Sends through the mail server at `smtpUrl`; one connection a message, so an idle server holds none of ours. */

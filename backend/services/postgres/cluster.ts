@@ -61,8 +61,9 @@ export async function startCluster(cluster: Cluster, options = ''): Promise<Post
     const log = `--log=${join(folder, 'server.log')}`;
     const args = ['start', `--pgdata=${folder}`, log, '--wait', '--timeout=60', '-o', `${listen} ${options}`];
     outcome = await runAs(account, join(programs, 'pg_ctl'), args);
-    const postmaster = outcome.code === 0 ? await runningPostmaster(cluster) : null;
-    if (postmaster) return postmaster;
+    const postmaster = await runningPostmaster(cluster);
+    if (postmaster && outcome.code === 0) return postmaster;
+    if (postmaster) await stopPostmaster(folder, postmaster); // interrupted, or too slow to be waited for
     await sleep(300);
   }
   throw new StartError(`The database in ${folder} does not start:\n${outcome.output}\n${logTail(folder)}`);

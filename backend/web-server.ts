@@ -1,0 +1,81 @@
+import { createServer, type RequestListener, type Server, type ServerResponse } from 'node:http';
+import type { AddressInfo } from 'node:net';
+import { localOrigin } from './config/settings.ts';
+import { StartError } from './config/start-error.ts';
+
+export interface WebServer {
+  /** Where this machine finds it; with port 0 the one that was free. */
+  origin: string;
+  /** Until the first handler is given, every request is answered 503. */
+  serve: (handler: RequestListener) => void;
+  /** Takes no new connection and waits for the answers under way. */
+  close: () => Promise<void>;
+}
+
+/** How long answers under way may still take once we are stopping. */
+const graceMilliseconds = 10_000;
+
+const starting: RequestListener = (_request, response) => {
+  response.writeHead(503, { 'Retry-After': '2', 'Content-Type': 'text/plain; charset=utf-8' });
+  response.end('Vesselry is starting.\n');
+};
+
+/**
+ * Takes the port before anything else is started, so that a second start fails early and touches nothing.
+ * @throws StartError when the port is taken or not ours to take
+ */
+export async function listen(host: string, port: number): Promise<WebServer> {
+  let handler = starting;
+  let closing = false;
+  const underWay = new Set<ServerResponse>();
+  const server = createServer((request, response) => {
+    underWay.add(response);
+    response.once('close', () => underWay.delete(response));
+    // A kept-alive connection would otherwise outlive the close by its idle time.
+    if (closing) response.setHeader('Connection', 'close');
+    handler(request, response);
+  });
+  await new Promise<void>((resolve, reject) => {
+    server.once('error', (error) => reject(explain(error, host, port)));
+    server.listen(port, host, resolve);
+  });
+  return {
+    origin: localOrigin(host, (server.address() as AddressInfo).port),
+    serve: (next) => {
+      handler = next;
+    },
+    close: () => {
+      closing = true;
+      return closeSoon(server, underWay);
+    },
+  };
+}
+
+function closeSoon(server: Server, underWay: Set<ServerResponse>): Promise<void> {
+  const idle = setInterval(() => server.closeIdleConnections(), 100);
+  const last = setTimeout(() => server.closeAllConnections(), graceMilliseconds);
+  // A stream of events has no end of its own.
+  for (const response of underWay) {
+    if (String(response.getHeader('Content-Type')).startsWith('text/event-stream')) response.end();
+  }
+  return new Promise((resolve) => {
+    server.close(() => {
+      clearInterval(idle);
+      clearTimeout(last);
+      resolve();
+    });
+  });
+}
+
+function explain(error: NodeJS.ErrnoException, host: string, port: number): Error {
+  const reasons: Record<string, string> = {
+    EADDRINUSE:
+      `Port ${port} of ${host} is taken; perhaps Vesselry is running already. ` +
+      `Stop that program, or choose another port: PORT=${port + 1} npm start`,
+    EACCES: `Port ${port} may be taken by the administrator only. Choose one from 1024 up with PORT.`,
+    EADDRNOTAVAIL: `HOST ${host} is no address of this machine.`,
+    ENOTFOUND: `HOST ${host} is not known as a name.`,
+  };
+  const reason = reasons[error.code ?? ''];
+  return reason ? new StartError(reason, { cause: error }) : error;
+}
