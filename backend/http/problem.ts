@@ -1,5 +1,5 @@
 import type { ErrorRequestHandler, RequestHandler } from 'express';
-import { OptimisticLockError } from '@mikro-orm/postgresql';
+import { OptimisticLockError, UniqueConstraintViolationException } from '@mikro-orm/postgresql';
 import { problems, type ProblemSlug } from '#schemas/vocabulary/problems.ts';
 import { logger } from './logger.ts';
 
@@ -52,6 +52,13 @@ function asProblem(error: unknown): Problem | undefined {
   if (error instanceof Problem) return error;
   if (error instanceof OptimisticLockError) {
     return new Problem(412, 'stale-revision', 'Someone changed this meanwhile; load it again and compare.');
+  }
+  if (error instanceof UniqueConstraintViolationException) {
+    return new Problem(
+      409,
+      'already-exists',
+      'Someone made the same thing a moment ago; load the page again.',
+    );
   }
   const { type, status } = error as { type?: string; status?: number };
   if (type !== undefined && type in bodyParserProblems) return bodyParserProblems[type];

@@ -1,3 +1,4 @@
+import type { Knex } from '@mikro-orm/postgresql';
 import type { Pool } from 'pg';
 import { RateLimiterPostgres, RateLimiterRes } from 'rate-limiter-flexible';
 import { Problem } from './problem.ts';
@@ -11,12 +12,13 @@ export interface RateLimit {
 
 /** Counts in PostgreSQL, shared by all processes and kept over a restart (WS-03). */
 export function rateLimit(
-  pool: Pool,
+  store: Pool | Knex,
   name: string,
   { points, seconds }: { points: number; seconds: number },
 ): RateLimit {
   const limiter = new RateLimiterPostgres({
-    storeClient: pool,
+    storeClient: store,
+    storeType: 'totalCount' in store ? 'pool' : 'knex',
     tableName: 'rate_limit',
     tableCreated: true,
     keyPrefix: name,

@@ -125,7 +125,7 @@ function renewSession(request: Request, membershipId: string): Promise<void> {
   const { epoch, signedInAt } = request.session;
   return new Promise((resolve, reject) => {
     request.logIn(request.user as Express.User, (error?: unknown) => {
-      if (error) return reject(error as Error);
+      if (error) return reject(error);
       Object.assign(request.session, { epoch, signedInAt, membershipId });
       resolve();
     });
@@ -134,5 +134,5 @@ function renewSession(request: Request, membershipId: string): Promise<void> {
 
 const endSession = (request: Request): Promise<void> =>
   new Promise((resolve, reject) => {
-    request.session.destroy((error: unknown) => (error ? reject(error as Error) : resolve()));
+    request.session.destroy((error: unknown) => (error ? reject(error) : resolve()));
   });

@@ -3,12 +3,12 @@ import type { Request } from 'express';
 import passport from 'passport';
 import { Strategy } from 'passport-local';
 import { act, systemChain } from '#backend/database/act.ts';
-import { noAbility } from '#schemas/abilities/ability.ts';
 import { runAs } from '#backend/http/actor.ts';
 import type { Deps } from '#backend/http/deps.ts';
 import { Problem } from '#backend/http/problem.ts';
 import { rateLimit } from '#backend/http/rate-limit.ts';
 import { passwordMatches } from './password.ts';
+import { asPerson, asSystem } from './person-actor.ts';
 import { PersonSchema, type Person } from './person.entity.ts';
 
 declare global {
@@ -62,17 +62,6 @@ export function configureSignIn({ orm, pool }: Deps): (request: Request) => Prom
   };
 }
 
-const asPerson = (person: Person) => ({
-  personId: person.id,
-  name: person.name,
-  membershipId: null,
-  role: 'signed-in' as const,
-  studyId: null,
-  siteIds: null,
-  unblinded: false,
-  ability: noAbility(),
-});
-
 async function checkPassword(em: EntityManager, email: string, password: string): Promise<Person | null> {
   const person = await em.findOne(PersonSchema, { email: email.toLowerCase() });
   const right = await passwordMatches(person?.passwordHash, password);
@@ -82,7 +71,7 @@ async function checkPassword(em: EntityManager, email: string, password: string)
 const authenticate = (request: Request): Promise<Person | false> =>
   new Promise((resolve, reject) => {
     const callback = (error: unknown, person: Person | false | undefined): void => {
-      if (error) reject(error as Error);
+      if (error) reject(error);
       else resolve(person || false);
     };
     (passport.authenticate('local', callback) as (...args: unknown[]) => void)(request, request.res, reject);
@@ -91,14 +80,14 @@ const authenticate = (request: Request): Promise<Person | false> =>
 /** `logIn` regenerates the session: a session id known before sign-in is worth nothing after it. */
 const logIn = (request: Request, person: Person): Promise<void> =>
   new Promise((resolve, reject) => {
-    request.logIn(person, (error?: unknown) => (error ? reject(error as Error) : resolve()));
+    request.logIn(person, (error?: unknown) => (error ? reject(error) : resolve()));
   });
 
 /** A refused try is on record under the account it was aimed at; an address without one leaves no trace of whether it exists. */
 async function recordRefusal(em: EntityManager, email: string): Promise<void> {
   const person = await em.findOne(PersonSchema, { email });
   if (person === null) return;
-  await runAs({ ...asPerson(person), personId: null, role: 'system' }, () =>
+  await runAs(asSystem, () =>
     act(
       em,
       { kind: 'sign-in-refused', subject: { type: 'person', id: person.id }, studyId: systemChain },

@@ -1,0 +1,1 @@
+export { assertStudyOpen } from './study-open.ts';
