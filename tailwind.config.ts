@@ -71,8 +71,8 @@ const variables = (scheme: Record<Token, string>) =>
 const tokens = Object.keys(schemes.paper) as Token[];
 
 /** A person's choice on the account page wins over the system's; paper is what is printed. */
-const schemeRules = plugin(({ addBase }) => {
-  addBase({
+const schemeRules = plugin((api) => {
+  api.addBase({
     ':root': { 'color-scheme': 'light', ...variables(schemes.paper) },
     '@media screen and (prefers-color-scheme: dark)': {
       ':root:not([data-scheme="paper"])': { 'color-scheme': 'dark', ...variables(schemes.drum) },

@@ -1,13 +1,13 @@
-import { useState } from 'react';
 import { Link } from 'react-router-dom';
 import { Menu, menuLine } from '../components/menu.tsx';
 import { useSession } from '../lib/session/session.ts';
 import { SignOutDialog } from './sign-out-dialog.tsx';
+import { useSignOut } from './use-sign-out.ts';
 
 /** The person, their account and the way out. */
 export function AccountMenu() {
   const { person } = useSession();
-  const [leaving, setLeaving] = useState(false);
+  const signOut = useSignOut();
   return (
     <>
       <Menu
@@ -30,7 +30,7 @@ export function AccountMenu() {
               className={menuLine}
               onClick={() => {
                 close();
-                setLeaving(true);
+                signOut.ask();
               }}
             >
               Sign out
@@ -38,7 +38,7 @@ export function AccountMenu() {
           </>
         )}
       </Menu>
-      {leaving && <SignOutDialog onStay={() => setLeaving(false)} />}
+      <SignOutDialog {...signOut} />
     </>
   );
 }

@@ -10,7 +10,6 @@ import { defaultScheme, schemePreference, type SchemeChoice } from '../lib/schem
 import { useSession } from '../lib/session/session.ts';
 import { usePageTitle } from '../lib/use-page-title.ts';
 import { KeySettings } from './key-settings.tsx';
-import { Page } from './study-layout.tsx';
 
 const schemeChoices = [
   { value: 'system', label: 'As this device is set' },
@@ -24,7 +23,7 @@ export function AccountPage() {
   const { person, memberships } = useSession();
   const [scheme, setScheme] = usePreference<SchemeChoice>(schemePreference, defaultScheme);
   return (
-    <Page>
+    <>
       <PageHead title={person.name} note={person.email} />
       <div className="grid items-start gap-4 lg:grid-cols-2">
         <Card title="Single-key shortcuts">
@@ -58,7 +57,7 @@ export function AccountPage() {
           </Card>
         </div>
       </div>
-    </Page>
+    </>
   );
 }
 

@@ -15,7 +15,7 @@ export function Band() {
   const may = useMay();
   const studyCode = acting?.studyCode;
   return (
-    <header data-ground="band" data-print="hide" className="sticky top-0 z-10 bg-band text-chalk">
+    <header data-ground="band" data-print="hide" className="z-10 bg-band text-chalk sm:sticky sm:top-0">
       <BandTrace />
       <div className="relative mx-auto flex min-h-13 max-w-page flex-wrap items-center gap-x-5 gap-y-1.5 px-6 py-1.5 max-sm:gap-x-3 max-sm:px-4">
         <Link to="/" className="flex items-center gap-2.5 text-lg font-semibold text-chalk no-underline">

@@ -7,7 +7,6 @@ import { useSession, type SessionMembership } from '../lib/session/session.ts';
 import { useActAs } from '../lib/session/sign-in.ts';
 import { usePageTitle } from '../lib/use-page-title.ts';
 import { homeOf } from './home.ts';
-import { Page } from './study-layout.tsx';
 
 /** Study and role, chosen once; the band shows them from then on. */
 export function ChoosePage() {
@@ -19,7 +18,7 @@ export function ChoosePage() {
     actAs.mutate(membership.membershipId, { onSuccess: () => void navigate(homeOf(membership)) });
 
   return (
-    <Page>
+    <>
       <PageHead title="Which study, and as what?" note={person.name} />
       {actAs.error && <ErrorState error={actAs.error} />}
       {memberships.length === 0 && (
@@ -53,6 +52,6 @@ export function ChoosePage() {
           </li>
         ))}
       </ul>
-    </Page>
+    </>
   );
 }

@@ -31,7 +31,7 @@ export function CodeSearch({ studyCode }: { studyCode: string }) {
         spellCheck={false}
         className="min-h-8 w-52 rounded border border-band-edge bg-band-field px-3 py-1 pr-9 text-sm text-chalk placeholder:text-chalk-soft max-sm:w-full"
       />
-      <span className="pointer-events-none absolute top-1.5 right-2" aria-hidden>
+      <span className="pointer-events-none absolute inset-y-0 right-2 flex items-center" aria-hidden>
         <Key tone="band">/</Key>
       </span>
     </form>

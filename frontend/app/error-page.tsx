@@ -2,26 +2,24 @@ import { isRouteErrorResponse, useRouteError } from 'react-router-dom';
 import { ApiProblem } from '../lib/api.ts';
 import { Card } from '../components/card.tsx';
 import { EmptyState, FailedState } from '../components/states.tsx';
+import { Page } from './page.tsx';
 import { usePageTitle } from '../lib/use-page-title.ts';
-import { Page } from './study-layout.tsx';
 
 /** An address that leads nowhere. */
 export function NotFoundPage() {
   usePageTitle('Not found');
   return (
-    <Page>
-      <Card flush>
-        <EmptyState title="This address leads nowhere">
-          <p>
-            The link may be old or cut short.{' '}
-            <a className="link" href="/">
-              Go to where your role begins
-            </a>
-            .
-          </p>
-        </EmptyState>
-      </Card>
-    </Page>
+    <Card flush>
+      <EmptyState title="This address leads nowhere">
+        <p>
+          The link may be old or cut short.{' '}
+          <a className="link" href="/">
+            Go to where your role begins
+          </a>
+          .
+        </p>
+      </EmptyState>
+    </Card>
   );
 }
 
@@ -32,13 +30,20 @@ export function ErrorPage() {
   // After a new release the old page asks for parts that are gone; loading the document anew brings the new ones.
   const reload = () => location.reload();
   return (
+    <Card flush>
+      <FailedState
+        error={error}
+        {...(error instanceof ApiProblem && error.status < 500 ? {} : { onRetry: reload })}
+      />
+    </Card>
+  );
+}
+
+/** When the frame itself failed. */
+export function LastErrorPage() {
+  return (
     <Page>
-      <Card flush>
-        <FailedState
-          error={error}
-          {...(error instanceof ApiProblem && error.status < 500 ? {} : { onRetry: reload })}
-        />
-      </Card>
+      <ErrorPage />
     </Page>
   );
 }

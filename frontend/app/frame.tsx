@@ -12,6 +12,8 @@ import { SessionContext, sessionQuery, type Session } from '../lib/session/sessi
 import { Band } from './band.tsx';
 import { IdleGuard } from './idle-guard.tsx';
 import { KeysDialog } from './keys-dialog.tsx';
+import { Page } from './page.tsx';
+import { PlaceTabs } from './place-tabs.tsx';
 import { SignInAgain } from './sign-in-again.tsx';
 import { usePersonsDeviceStore } from './use-persons-device-store.ts';
 
@@ -57,8 +59,11 @@ function SignedIn({ session, lost }: { session: Session; lost: boolean }) {
             Skip to the page
           </a>
           <Band />
+          <PlaceTabs />
           <OfflineBanner />
-          <Outlet />
+          <Page>
+            <Outlet />
+          </Page>
           <NoticeRegion />
           {keysShown && <KeysDialog onClose={() => setKeysShown(false)} />}
           {lost ? <SignInAgain session={session} /> : <IdleGuard session={session} />}

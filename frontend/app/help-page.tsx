@@ -4,7 +4,6 @@ import { Card, PageHead } from '../components/card.tsx';
 import { Key } from '../components/button.tsx';
 import { StateMark, type PenState } from '../components/pen-mark.tsx';
 import { usePageTitle } from '../lib/use-page-title.ts';
-import { Page } from './study-layout.tsx';
 
 const marks: [PenState, string, string][] = [
   ['todo', 'flat line', 'to do: nothing has been done yet'],
@@ -32,7 +31,7 @@ const words: [string, string][] = [
 export function HelpPage() {
   usePageTitle('Help');
   return (
-    <Page>
+    <>
       <PageHead title="Help" />
       <div className="grid items-start gap-4 lg:grid-cols-2">
         <Card title="Pen marks">
@@ -69,7 +68,7 @@ export function HelpPage() {
           </Caution>
         </Card>
       </div>
-    </Page>
+    </>
   );
 }
 

@@ -1,16 +1,17 @@
 import { createBrowserRouter } from 'react-router-dom';
 import { Skeleton } from '../components/states.tsx';
-import { ErrorPage, NotFoundPage } from './error-page.tsx';
+import { AdministrationIndex, AdministrationLayout } from './administration-layout.tsx';
+import { ErrorPage, LastErrorPage, NotFoundPage } from './error-page.tsx';
 import { Frame } from './frame.tsx';
 import { HomePage } from './home-page.tsx';
 import { administrationPages, openPages, personPages, studyPages } from './routes.tsx';
-import { AdministrationIndex, AdministrationLayout, StudyLayout } from './study-layout.tsx';
+import { StudyLayout } from './study-layout.tsx';
 
 /** Layouts around the table of pages. Each layout has its own error page, so that a failed part leaves the frame. */
 export const createRouter = () =>
   createBrowserRouter([
     {
-      ErrorBoundary: ErrorPage,
+      ErrorBoundary: LastErrorPage,
       HydrateFallback: Skeleton,
       children: [
         ...openPages,

@@ -43,7 +43,7 @@ type ButtonProps = Look &
 export function Button(props: ButtonProps) {
   const {
     variant,
-    large,
+    large: _large,
     keyHint,
     disabled = false,
     busy = false,
@@ -59,7 +59,7 @@ export function Button(props: ButtonProps) {
       {...rest}
       aria-disabled={off || undefined}
       data-state={busy ? 'busy' : undefined}
-      className={classNames(look({ ...props, variant, large } as Look), className)}
+      className={classNames(look(props), className)}
       onClick={(event) => {
         if (off) event.preventDefault();
         else onClick?.(event);
@@ -73,9 +73,10 @@ export function Button(props: ButtonProps) {
 }
 
 /** A link that looks like a button: it goes somewhere, it does not do something. */
-export function ButtonLink({ variant, large, keyHint, className, children, ...rest }: Look & LinkProps) {
+export function ButtonLink(props: Look & LinkProps) {
+  const { variant, large: _large, keyHint, className, children, ...rest } = props;
   return (
-    <Link {...rest} className={classNames(look({ variant, large } as Look), className)}>
+    <Link {...rest} className={classNames(look(props), className)}>
       {children}
       {keyHint && <Key tone={variant === 'primary' ? 'light' : 'plain'}>{keyHint}</Key>}
     </Link>

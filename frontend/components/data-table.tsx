@@ -93,12 +93,12 @@ export function DataTable<Row>(props: DataTableProps<Row>) {
           }}
         />
       )}
-      {/* A scrolling region must be reachable by keyboard (WCAG 2.1.1). */}
-      {/* eslint-disable-next-line jsx-a11y/no-noninteractive-tabindex */}
       <div
         ref={scroller}
         role="region"
         aria-label={caption}
+        // A region that scrolls must be reachable by keyboard (WCAG 2.1.1).
+        // eslint-disable-next-line jsx-a11y/no-noninteractive-tabindex
         tabIndex={0}
         className={classNames('overflow-auto', virtual && 'max-h-[70dvh]')}
       >

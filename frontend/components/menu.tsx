@@ -27,10 +27,14 @@ export function Menu({ label, name, buttonClassName, align = 'left', children }:
     return () => document.removeEventListener('pointerdown', handlePointer);
   }, [open]);
 
-  const close = () => {
-    setOpen(false);
-    button.current?.focus();
-  };
+  const wasOpen = useRef(false);
+  useEffect(() => {
+    // A closed panel must not leave the focus nowhere.
+    if (wasOpen.current && !open && document.activeElement === document.body) button.current?.focus();
+    wasOpen.current = open;
+  }, [open]);
+
+  const close = () => setOpen(false);
 
   return (
     // Escape is caught for whatever inside has the focus; the interactive parts are the button and its panel.

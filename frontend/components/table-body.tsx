@@ -28,6 +28,8 @@ function WholeBody<Row>({ columns, rows, rowKey, rowState }: TableBodyProps<Row>
 }
 
 function VirtualBody<Row>({ columns, rows, rowKey, rowState, scroller }: TableBodyProps<Row>) {
+  // The compiler that this rule speaks for is not in use here.
+  // eslint-disable-next-line react-hooks/incompatible-library
   const virtualizer = useVirtualizer({
     count: rows.length,
     getScrollElement: () => scroller.current,

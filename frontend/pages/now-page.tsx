@@ -42,7 +42,7 @@ function Items({ items }: { items: readonly NowItem[] }) {
   return (
     <Card flush>
       <ul className="divide-y divide-rule-soft">
-        {items.map((item) => (
+        {items.map((item, at) => (
           <li
             key={item.href + item.title}
             className="flex flex-wrap items-center gap-x-5 gap-y-2 px-4 py-3.5"
@@ -57,7 +57,7 @@ function Items({ items }: { items: readonly NowItem[] }) {
               <h2 className="text-base">{item.title}</h2>
               <p className="text-sm text-ink-soft">{item.detail}</p>
             </div>
-            <ButtonLink to={item.href}>
+            <ButtonLink to={item.href} variant={at === 0 ? 'primary' : 'plain'}>
               {item.action}
               <span className="sr-only">: {item.title}</span>
             </ButtonLink>
