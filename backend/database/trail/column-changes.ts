@@ -64,7 +64,7 @@ export async function columnChanges(
   const changes = values.map((value) => ({
     subject: `${value.subjectType}/${value.subjectId}`,
     address: value.address,
-    old: old.get(`${value.subjectId}${value.address}`) ?? null,
+    old: old.get(`${value.subjectType}/${value.subjectId}${value.address}`) ?? null,
     new: value.commitment,
   }));
   return { values, changes };
@@ -75,11 +75,13 @@ async function newestCommitments(
   studyId: string,
   subjectIds: string[],
 ): Promise<Map<string, string>> {
-  const rows = await tx.execute<{ subject_id: string; address: string; commitment: string }[]>(
-    `select distinct on (subject_id, address) subject_id, address, encode(commitment, 'hex') as commitment
+  const rows = await tx.execute<
+    { subject_type: string; subject_id: string; address: string; commitment: string }[]
+  >(
+    `select distinct on (subject_type, subject_id, address) subject_type, subject_id, address, encode(commitment, 'hex') as commitment
        from recorded_value where study_id = ? and subject_id = any(?::uuid[])
-      order by subject_id, address, sequence desc`,
+      order by subject_type, subject_id, address, sequence desc`,
     [studyId, `{${subjectIds.join(',')}}`],
   );
-  return new Map(rows.map((row) => [`${row.subject_id}${row.address}`, row.commitment]));
+  return new Map(rows.map((row) => [`${row.subject_type}/${row.subject_id}${row.address}`, row.commitment]));
 }
