@@ -101,3 +101,10 @@ export function innerProduct(x: ArrayLike<number>, y: ArrayLike<number>): number
 export function bilinearForm(a: Float64Array, n: number, x: ArrayLike<number>, y: ArrayLike<number>): number {
   return innerProduct(x, times(a, n, y));
 }
+
+/** tr(AB) for n × n matrices. */
+export function traceOfProduct(a: Float64Array, b: Float64Array, n: number): number {
+  let sum = 0;
+  for (let i = 0; i < n; i += 1) for (let j = 0; j < n; j += 1) sum += a[i * n + j]! * b[j * n + i]!;
+  return sum;
+}

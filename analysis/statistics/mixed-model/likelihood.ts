@@ -36,16 +36,6 @@ export interface LikelihoodParts {
   readonly informationLoss: readonly Float64Array[];
 }
 
-/** Second derivatives in the order in which their slots are summed. */
-const PAIRS = [
-  [0, 0],
-  [0, 1],
-  [0, 2],
-  [1, 1],
-  [1, 2],
-  [2, 2],
-] as const;
-
 /**
  * Evaluates the parts of the likelihood of a linear mixed model at Φ = ΛΛ'.
  *
@@ -59,18 +49,16 @@ const PAIRS = [
 export function likelihoodParts(
   statistics: SubjectStatistics,
   factor: RelativeFactor,
-  { reml, derivatives }: { reml: boolean; derivatives: boolean },
+  reml: boolean,
 ): LikelihoodParts | null {
   const p = statistics.columns;
   const logDeterminants = emptyExpansion();
-  const slots = derivatives ? 10 : 1;
   const k = emptyPatternCovariance();
-  const sums = weightedMoments(statistics, slots, (pattern, weights) => {
+  const sums = weightedMoments(statistics, 4 + PAIRS.length, (pattern, weights) => {
     patternCovariance(statistics, pattern, factor, k);
     weights.set(k.inverse);
     const count = statistics.counts[pattern]!;
     logDeterminants.value += count * k.logDeterminant;
-    if (!derivatives) return;
     const { g11, g12, g22 } = k;
     const gradient = logDeterminants.gradient;
     gradient[0]! += count * g11;
@@ -96,12 +84,12 @@ export function likelihoodParts(
   const unscaledCovariance = choleskyInverse(l, p);
   const residual = emptyExpansion();
   residual.value = cross.corner - innerProduct(coefficients, cross.vector);
-  if (reml) logDeterminants.value += choleskyLogDeterminant(l, p);
-  const first = derivatives ? [1, 2, 3].map((index) => unpack(slot(index), p)) : [];
-  if (derivatives) {
-    const second = PAIRS.map((_, index) => slot(4 + index));
-    expandResidual(residual, first, second, coefficients, unscaledCovariance, p);
-    if (reml) expandLogDeterminant(logDeterminants, first, second, unscaledCovariance, p);
+  const first = [1, 2, 3].map((index) => unpack(slot(index), p));
+  const second = PAIRS.map((_, index) => slot(4 + index));
+  expandResidual(residual, first, second, coefficients, unscaledCovariance, p);
+  if (reml) {
+    logDeterminants.value += choleskyLogDeterminant(l, p);
+    expandLogDeterminant(logDeterminants, first, second, unscaledCovariance, p);
   }
   const informationLoss = first.map((block) => block.matrix);
   return { logDeterminants, residual, coefficients, unscaledCovariance, informationLoss };
