@@ -3,7 +3,7 @@ import type { Action, SubjectName } from '#schemas/abilities/ability.ts';
 import type { ActKind } from '#schemas/vocabulary/act-kinds.ts';
 import { currentActor } from './actor.ts';
 import { invalidBody, notAllowed, notFound, Problem } from './problem.ts';
-import { problemsOf } from './validate.ts';
+import { illegalTexts, problemsOf } from './validate.ts';
 
 type Method = 'get' | 'post' | 'put' | 'patch' | 'delete';
 
@@ -68,7 +68,7 @@ function assertBody(declaration: RouteDeclaration, request: Request): void {
   if (request.body === undefined) {
     throw new Problem(400, 'unreadable-body', 'Send a JSON body with content type application/json.');
   }
-  const found = problemsOf(declaration.body, request.body);
+  const found = [...illegalTexts(request.body), ...problemsOf(declaration.body, request.body)];
   if (found.length > 0) throw invalidBody(found);
 }
 

@@ -52,3 +52,19 @@ export function problemsOf(schema: object, value: unknown): FieldProblem[] {
   const validate = validatorOf(schema);
   return validate(value) ? [] : (validate.errors ?? []).map(fieldProblem);
 }
+
+// Characters that XML 1.0 cannot carry, and halves of a surrogate pair: no export could hold them.
+// eslint-disable-next-line no-control-regex
+const illegal = /[\u0000-\u0008\u000b\u000c\u000e-\u001f\ufffe\uffff]|\p{Surrogate}/u;
+
+/** Texts, names of members included, that hold characters no record can keep. */
+export function illegalTexts(value: unknown, pointer = ''): FieldProblem[] {
+  if (typeof value === 'string') {
+    return illegal.test(value) ? [{ pointer, detail: 'holds a control character; remove it' }] : [];
+  }
+  if (typeof value !== 'object' || value === null) return [];
+  return Object.entries(value).flatMap(([name, member]) => [
+    ...(illegal.test(name) ? [{ pointer, detail: 'has a member name with a control character' }] : []),
+    ...illegalTexts(member, `${pointer}/${escaped(name)}`),
+  ]);
+}
