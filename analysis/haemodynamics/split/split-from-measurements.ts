@@ -6,7 +6,7 @@ import { sharesOfChange } from './shares.ts';
 import type { Shares } from './shares.ts';
 import { splitOfChange } from './split-of-change.ts';
 import { defaultSensitivityLaws, viscosityLawNamed } from '../../haemorheology/viscosity-laws.ts';
-import type { LawOptions, ViscosityLaw } from '../../haemorheology/viscosity-laws.ts';
+import type { LawOptions, ViscosityLaw } from '../../haemorheology/viscosity-law.ts';
 import { temperatureCorrectedViscosity } from '../../haemorheology/viscosity/temperature-corrected-viscosity.ts';
 import { DomainError } from '../../units/errors.ts';
 import { quantity } from '../../units/quantity.ts';
