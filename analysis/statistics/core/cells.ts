@@ -65,19 +65,22 @@ export function gatherCells(
  * The outcome by subject and level of `condition`, complete subjects only: what most methods start from.
  *
  * Checks, in the contract's order: numbers, sign, keys (subject, condition), levels, duplicates, completeness.
- * Errors   also too_few_subjects below `least`, level_missing (without fields) below `leastLevels` levels
+ * Errors   also too_few_subjects below `least`, level_missing (without fields) below two levels
  */
 export function completeCells(
   plan: Plan,
   table: Table,
-  { least = 2, leastLevels = 2 }: { least?: number; leastLevels?: number } = {},
+  {
+    least = 2,
+    requireLevels = twoLevels,
+  }: { least?: number; requireLevels?: (levels: string[]) => void } = {},
 ): CompleteCells {
   const { subject, condition } = required(plan, 'subject', 'condition');
   const values = outcomeValues(plan, table);
   const subjects = table.keys(subject);
   const conditions = table.keys(condition);
   const levels = table.levels(condition, plan.levels);
-  if (levels.length < leastLevels) throw new AnalysisError('level_missing');
+  requireLevels(levels);
   const cells = gatherCells(plan, {
     subjects,
     cellOf: indexIn(levels, conditions),
@@ -105,6 +108,11 @@ export function completeRows({ subjects, values }: SubjectCells): Omit<CompleteC
 export function indexIn(levels: readonly string[], texts: readonly string[]): Int32Array {
   const positions = new Map(levels.map((level, index) => [level, index]));
   return Int32Array.from(texts, (text) => positions.get(text) ?? -1);
+}
+
+/** Errors: level_missing, without fields. */
+function twoLevels(levels: string[]): void {
+  if (levels.length < 2) throw new AnalysisError('level_missing');
 }
 
 /** Errors: too_few_subjects below `least`. */

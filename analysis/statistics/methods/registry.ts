@@ -1,10 +1,46 @@
 import type { Method } from '../core/method.ts';
 import type { MethodName } from '../core/plan.ts';
+import { blandAltman } from './bland-altman.ts';
+import { bootstrapCi } from './bootstrap-ci.ts';
+import { correlationWithinSubject } from './correlation-within-subject.ts';
+import { doseResponse } from './dose-response.ts';
+import { equivalencePaired } from './equivalence-paired.ts';
+import { friedman } from './friedman.ts';
+import { geometricMeanRatio } from './geometric-mean-ratio.ts';
+import { groupShare } from './group-share.ts';
+import { icc } from './icc.ts';
+import { multiplicity } from './multiplicity.ts';
+import { pairedDeltaAdjusted } from './paired-delta-adjusted.ts';
 import { pairedT } from './paired-t.ts';
+import { permutationPaired } from './permutation-paired.ts';
+import { powerCrossover } from './power-crossover.ts';
+import { powerPairedT } from './power-paired-t.ts';
+import { repeatability } from './repeatability.ts';
+import { shapiroWilk } from './shapiro-wilk.ts';
+import { signTest } from './sign-test.ts';
+import { wilcoxonSignedRank } from './wilcoxon-signed-rank.ts';
 
 const list: readonly Method[] = [
   pairedT,
-  // Variance, linear and mixed models go here, one a line, in the contract's order.
+  wilcoxonSignedRank,
+  signTest,
+  // Variance, linear and mixed models go here, one a line.
+  friedman,
+  blandAltman,
+  icc,
+  repeatability,
+  equivalencePaired,
+  bootstrapCi,
+  groupShare,
+  pairedDeltaAdjusted,
+  permutationPaired,
+  shapiroWilk,
+  powerPairedT,
+  powerCrossover,
+  geometricMeanRatio,
+  correlationWithinSubject,
+  doseResponse,
+  multiplicity,
 ];
 
 /** Every method by its name. */
