@@ -9,6 +9,7 @@ import { friedman } from './friedman.ts';
 import { geometricMeanRatio } from './geometric-mean-ratio.ts';
 import { groupShare } from './group-share.ts';
 import { icc } from './icc.ts';
+import { linearMixedModel } from './linear-mixed-model.ts';
 import { multiplicity } from './multiplicity.ts';
 import { pairedDeltaAdjusted } from './paired-delta-adjusted.ts';
 import { pairedT } from './paired-t.ts';
@@ -25,6 +26,7 @@ const list: readonly Method[] = [
   wilcoxonSignedRank,
   signTest,
   // Variance, linear and mixed models go here, one a line.
+  linearMixedModel,
   friedman,
   blandAltman,
   icc,

@@ -45,6 +45,8 @@ export interface MixedModelFit {
   readonly parameterCount: number;
   readonly reml: boolean;
   readonly statistics: SubjectStatistics;
+  /** X'X over all rows, row-major. */
+  readonly crossProducts: Float64Array;
   /** Elements of Λ in the model (not only those away from the boundary). */
   readonly elements: FreeElements;
   readonly free: FreeElements;
@@ -119,7 +121,7 @@ function describe(
     atBoundary,
     logLikelihood: -0.5 * deviance,
     parameterCount: statistics.columns + elements.length + 1,
-    ...{ reml, statistics, elements, free, factor, parts },
+    ...{ reml, statistics, crossProducts: fit.crossProducts, elements, free, factor, parts },
   };
 }
 

@@ -6,6 +6,8 @@ import { weightedMoments } from './weighted-moments.ts';
 /** Statistics of rows whose model can be fitted. */
 export interface PreparedRows {
   readonly statistics: SubjectStatistics;
+  /** X'X over all rows, row-major. */
+  readonly crossProducts: Float64Array;
   /** Coefficients whose fit was subtracted from the outcome. */
   readonly subtracted: Float64Array;
   /** Least-squares coefficients of what is left of the outcome. */
@@ -27,6 +29,7 @@ const NEARLY_ALL = 1e-4;
 export function prepareRows(rows: MixedModelRows, negligible: number): PreparedRows {
   const subtracted = new Float64Array(rows.columns.length);
   let { statistics, overall, within } = plainFits(rows);
+  const { crossProducts } = overall;
   if (overall.rank < rows.columns.length || statistics.rows <= overall.rank) {
     throw invalidPlan(
       'The fixed part is rank-deficient: a column follows from others, or a combination of levels has no row. Leave out a term.',
@@ -46,10 +49,10 @@ export function prepareRows(rows: MixedModelRows, negligible: number): PreparedR
     ({ statistics, overall, within } = plainFits({ ...rows, outcome: residuals(rows, subtracted) }));
   }
   if (within.sumOfSquares <= negligible ** 2 * statistics.rows) throw new AnalysisError('zero_variance');
-  return { statistics, subtracted, coefficients: overall.coefficients };
+  return { statistics, crossProducts, subtracted, coefficients: overall.coefficients };
 }
 
-type ComparedFit = PlainFit & { nearlyAll: boolean };
+type ComparedFit = PlainFit & { nearlyAll: boolean; crossProducts: Float64Array };
 
 /** Least squares over all rows, and within subjects (beside the random-effects columns). */
 function plainFits(rows: MixedModelRows): {
@@ -67,7 +70,7 @@ function plainFits(rows: MixedModelRows): {
   const squares = (column: number) => all.matrix[column * p + column]!;
   const compare = (cross: typeof all) => {
     const fit = solveNormalEquations(cross, squares);
-    return { ...fit, nearlyAll: fit.sumOfSquares < NEARLY_ALL * cross.corner };
+    return { ...fit, crossProducts: cross.matrix, nearlyAll: fit.sumOfSquares < NEARLY_ALL * cross.corner };
   };
   return { statistics, overall: compare(all), within: compare(unpack(statistics.within, p)) };
 }

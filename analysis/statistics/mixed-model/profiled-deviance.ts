@@ -81,7 +81,7 @@ export function byFreeElements(
   free.forEach((a, i) => {
     for (let r = 0; r < 3; r += 1) result.gradient[i]! += jacobian[a][r]! * gradient[r]!;
     free.forEach((b, j) => {
-      let sum = curvature[a][b]!;
+      let sum = curvature[a][b];
       for (let r = 0; r < 3; r += 1) {
         for (let c = 0; c < 3; c += 1) sum += jacobian[a][r]! * hessian[3 * r + c]! * jacobian[b][c]!;
       }
