@@ -44,12 +44,12 @@ export function AccountPage() {
           </Card>
           <Card title="Your roles">
             <ul className="flex flex-col gap-1.5">
-              {memberships.map(({ membershipId, studyCode, role, sites }) => (
-                <li key={membershipId}>
+              {memberships.map(({ id, studyCode, studyName, role }) => (
+                <li key={id}>
                   {studyCode ?? 'Administration'}
                   <span className="text-ink-soft">
                     {' '}
-                    · {[roleNames[role], ...sites.map(({ name }) => name)].join(', ')}
+                    · {[roleNames[role], studyName].filter(Boolean).join(', ')}
                   </span>
                 </li>
               ))}

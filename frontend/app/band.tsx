@@ -4,16 +4,16 @@ import { roleNames } from '#schemas/vocabulary/roles.ts';
 import { BandTrace, Mark } from '../components/mark.tsx';
 import { nowQuery } from '../lib/now.ts';
 import { useMay } from '../lib/session/ability.ts';
-import { useSession, type SessionMembership } from '../lib/session/session.ts';
+import { useSession, type Session } from '../lib/session/session.ts';
 import { AccountMenu } from './account-menu.tsx';
 import { CodeSearch } from './code-search.tsx';
 import { StudyMenu } from './study-menu.tsx';
 
 /** The soot band on top: study, role acted in, search by code, what needs me, account. */
 export function Band() {
-  const { acting } = useSession();
+  const session = useSession();
   const may = useMay();
-  const studyCode = acting?.studyCode;
+  const studyCode = session.acting?.studyCode;
   return (
     <header data-ground="band" data-print="hide" className="z-10 bg-band text-chalk sm:sticky sm:top-0">
       <BandTrace />
@@ -23,7 +23,7 @@ export function Band() {
           <span className="max-md:sr-only">Vesselry</span>
         </Link>
         <StudyMenu />
-        {acting && <span className="text-sm text-chalk-soft max-lg:sr-only">{actingAs(acting)}</span>}
+        <span className="text-sm text-chalk-soft max-lg:sr-only">{actingAs(session)}</span>
         <span className="flex-1" />
         {studyCode && may('read', 'Participant') && <CodeSearch studyCode={studyCode} />}
         {studyCode && <NeedCount studyCode={studyCode} />}
@@ -33,12 +33,13 @@ export function Band() {
   );
 }
 
-/** "as coordinator, site Upper Scree" */
-function actingAs({ role, sites, unblinded }: SessionMembership): string {
-  const where =
-    sites.length === 0
-      ? ''
-      : `, ${sites.length === 1 ? 'site' : 'sites'} ${sites.map(({ name }) => name).join(' and ')}`;
+/** "as coordinator, site Upper Scree": the sites where the role is limited to some. */
+function actingAs({ acting, memberships }: Session): string {
+  if (!acting) return '';
+  const { membershipId, role, sites, unblinded } = acting;
+  const limited = memberships.find(({ id }) => id === membershipId)?.siteIds != null;
+  const names = sites.map(({ name }) => name).join(' and ');
+  const where = limited ? `, ${sites.length === 1 ? 'site' : 'sites'} ${names}` : '';
   return `as ${roleNames[role]}${where}${unblinded ? ', unblinded' : ''}`;
 }
 

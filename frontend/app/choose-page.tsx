@@ -3,7 +3,7 @@ import { roleNames } from '#schemas/vocabulary/roles.ts';
 import { Button } from '../components/button.tsx';
 import { PageHead } from '../components/card.tsx';
 import { EmptyState, ErrorState } from '../components/states.tsx';
-import { useSession, type SessionMembership } from '../lib/session/session.ts';
+import { useSession, type Membership } from '../lib/session/session.ts';
 import { useActAs } from '../lib/session/sign-in.ts';
 import { usePageTitle } from '../lib/use-page-title.ts';
 import { homeOf } from './home.ts';
@@ -14,8 +14,8 @@ export function ChoosePage() {
   const { memberships, person } = useSession();
   const actAs = useActAs();
   const navigate = useNavigate();
-  const choose = (membership: SessionMembership) =>
-    actAs.mutate(membership.membershipId, { onSuccess: () => void navigate(homeOf(membership)) });
+  const choose = (membership: Membership) =>
+    actAs.mutate(membership.id, { onSuccess: () => void navigate(homeOf(membership)) });
 
   return (
     <>
@@ -29,20 +29,20 @@ export function ChoosePage() {
       <ul className="grid gap-4 md:grid-cols-2">
         {memberships.map((membership) => (
           <li
-            key={membership.membershipId}
+            key={membership.id}
             className="flex flex-wrap items-center gap-3 rounded border bg-paper px-4 py-3"
           >
             <div className="min-w-0 flex-1">
               <h2 className="text-base">{membership.studyCode ?? 'Administration'}</h2>
               {membership.studyName && <p className="text-sm text-ink-soft">{membership.studyName}</p>}
               <p className="text-sm">
-                {[roleNames[membership.role], ...membership.sites.map(({ name }) => name)].join(', ')}
+                {roleNames[membership.role]}
                 {membership.unblinded && ', unblinded'}
               </p>
             </div>
             <Button
               onClick={() => choose(membership)}
-              busy={actAs.isPending && actAs.variables === membership.membershipId}
+              busy={actAs.isPending && actAs.variables === membership.id}
             >
               Open
               <span className="sr-only">

@@ -66,7 +66,7 @@ function SignedIn({ session, lost }: { session: Session; lost: boolean }) {
           </Page>
           <NoticeRegion />
           {keysShown && <KeysDialog onClose={() => setKeysShown(false)} />}
-          {lost ? <SignInAgain session={session} /> : <IdleGuard session={session} />}
+          {lost ? <SignInAgain session={session} /> : <IdleGuard />}
         </DeviceStoreContext>
       </AbilityContext>
     </SessionContext>

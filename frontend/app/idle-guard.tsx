@@ -2,18 +2,18 @@ import { useEffect, useState } from 'react';
 import { Button } from '../components/button.tsx';
 import { Dialog } from '../components/dialog.tsx';
 import { api, lastContact } from '../lib/api.ts';
-import type { Session } from '../lib/session/session.ts';
 
 const warnSeconds = 60;
 const renewAfter = 5 * 60_000;
-const defaultIdleMinutes = 30;
+/** The server's limit (WS-04). */
+const idleMinutes = 30;
 
 /**
  * Warns a minute before the idle limit ends the session, with a button to stay (WCAG 2.2.1). Someone who works on
  * the page without sending anything renews the session by moving.
  */
-export function IdleGuard({ session }: { session: Session }) {
-  const left = useSecondsLeft((session.idleMinutes ?? defaultIdleMinutes) * 60);
+export function IdleGuard() {
+  const left = useSecondsLeft(idleMinutes * 60);
   useRenewal();
   if (left > warnSeconds) return null;
   return (

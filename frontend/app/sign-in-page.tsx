@@ -2,10 +2,8 @@ import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import { Navigate, useLocation } from 'react-router-dom';
 import { Mark } from '../components/mark.tsx';
-import { groupBy } from '../lib/group-by.ts';
 import { sessionQuery } from '../lib/session/session.ts';
 import { statusQuery, type DemoAccount } from '../lib/status.ts';
-import { roleNames, type Role } from '#schemas/vocabulary/roles.ts';
 import { BareLayout } from './bare-layout.tsx';
 import { SignInForm } from './sign-in-form.tsx';
 
@@ -21,7 +19,9 @@ export function SignInPage() {
     <BareLayout title="Sign in" wide={accounts.length > 0}>
       <div
         className={
-          accounts.length > 0 ? 'grid gap-6 md:grid-cols-[minmax(0,20rem)_minmax(0,1fr)]' : undefined
+          accounts.length > 0
+            ? 'grid items-start gap-6 md:grid-cols-[minmax(0,20rem)_minmax(0,1fr)]'
+            : undefined
         }
       >
         <section className="rounded border bg-paper px-5 py-4">
@@ -48,37 +48,27 @@ interface DemoAccountsProps {
 }
 
 function DemoAccounts({ accounts, chosen, onChoose }: DemoAccountsProps) {
-  const studies = groupBy(accounts, ({ study }) => study ?? 'Administration');
   return (
     <section aria-labelledby="demo-accounts" className="rounded border bg-paper px-5 py-4">
       <h2 id="demo-accounts">Demo accounts</h2>
       <p className="mt-1 text-sm text-ink-soft">
         This system runs on invented studies and people. Choose an account to fill in the form, then sign in.
       </p>
-      <div className="mt-3 grid gap-x-6 gap-y-4 sm:grid-cols-2">
-        {[...studies].map(([study, members]) => (
-          <div key={study}>
-            <h3 className="mb-1 text-sm">{study}</h3>
-            <ul className="flex flex-col">
-              {members.map((account) => (
-                <li key={account.email}>
-                  <button
-                    type="button"
-                    aria-pressed={chosen === account.email}
-                    onClick={() => onChoose(account)}
-                    className="flex min-h-9 w-full items-baseline gap-2 rounded-sm border border-transparent px-2 py-1.5 text-left text-sm hover:bg-bone aria-pressed:border-venous aria-pressed:bg-venous-wash"
-                  >
-                    <span className="link no-underline">
-                      {roleNames[account.role as Role] ?? account.role}
-                    </span>
-                    <span className="text-ink-soft">{account.name}</span>
-                  </button>
-                </li>
-              ))}
-            </ul>
-          </div>
+      <ul className="mt-3 grid gap-x-6 gap-y-1 sm:grid-cols-2">
+        {accounts.map((account) => (
+          <li key={account.email}>
+            <button
+              type="button"
+              aria-pressed={chosen === account.email}
+              onClick={() => onChoose(account)}
+              className="flex min-h-11 w-full flex-col rounded-sm border border-transparent px-2 py-1.5 text-left text-sm hover:bg-bone aria-pressed:border-venous aria-pressed:bg-venous-wash"
+            >
+              <span className="text-venous">{account.roles}</span>
+              <span className="text-ink-soft">{account.name}</span>
+            </button>
+          </li>
         ))}
-      </div>
+      </ul>
     </section>
   );
 }

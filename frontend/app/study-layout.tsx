@@ -4,7 +4,7 @@ import { Button } from '../components/button.tsx';
 import { Card } from '../components/card.tsx';
 import { ErrorState, ForbiddenState } from '../components/states.tsx';
 import { useActAs } from '../lib/session/sign-in.ts';
-import { useSession, type SessionMembership } from '../lib/session/session.ts';
+import { useSession, type Membership } from '../lib/session/session.ts';
 
 /** The pages of a study, once the person acts in it. A link from a colleague may lead into another one. */
 export function StudyLayout() {
@@ -19,7 +19,7 @@ export function StudyLayout() {
 
 interface ChooseRoleProps {
   studyCode: string;
-  memberships: readonly SessionMembership[];
+  memberships: readonly Membership[];
 }
 
 function ChooseRole({ studyCode, memberships }: ChooseRoleProps) {
@@ -29,8 +29,8 @@ function ChooseRole({ studyCode, memberships }: ChooseRoleProps) {
       <p>You do not act in this study now. Choose the role in which to open it.</p>
       {actAs.error && <ErrorState error={actAs.error} />}
       <div className="mt-3 flex flex-wrap gap-3">
-        {memberships.map(({ membershipId, role }) => (
-          <Button key={membershipId} busy={actAs.isPending} onClick={() => actAs.mutate(membershipId)}>
+        {memberships.map(({ id, role }) => (
+          <Button key={id} busy={actAs.isPending} onClick={() => actAs.mutate(id)}>
             Act as {roleNames[role]}
           </Button>
         ))}

@@ -21,10 +21,10 @@ export function StudyMenu() {
       {(close) => (
         <ul>
           {memberships.map((membership) => {
-            const { membershipId, studyCode, role, sites } = membership;
-            const current = membershipId === acting?.membershipId;
+            const { id, studyCode, studyName, role } = membership;
+            const current = id === acting?.membershipId;
             return (
-              <li key={membershipId}>
+              <li key={id}>
                 <button
                   type="button"
                   className={menuLine}
@@ -32,7 +32,7 @@ export function StudyMenu() {
                   onClick={() => {
                     close();
                     if (current) return;
-                    actAs.mutate(membershipId, {
+                    actAs.mutate(id, {
                       onSuccess: () => void navigate(homeOf(membership)),
                       onError: (error) => say(inWords(error).detail, 'asks'),
                     });
@@ -43,7 +43,7 @@ export function StudyMenu() {
                     {current && ' · acting now'}
                   </span>
                   <span className="text-ink-soft">
-                    {[roleNames[role], ...sites.map(({ name }) => name)].join(', ')}
+                    {[roleNames[role], studyName].filter(Boolean).join(' · ')}
                   </span>
                 </button>
               </li>

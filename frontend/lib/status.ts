@@ -5,8 +5,8 @@ export interface DemoAccount {
   email: string;
   password: string;
   name: string;
-  role: string;
-  study: string | null;
+  /** In words: "coordinator, both studies". */
+  roles: string;
 }
 
 export interface Status {

@@ -5,15 +5,16 @@ import { PenMark } from '../components/pen-mark.tsx';
 import { EmptyState, Loaded } from '../components/states.tsx';
 import { formatAge, formatDate, formatMoment } from '../lib/format/dates.ts';
 import { nowQuery, type Now, type NowItem } from '../lib/now.ts';
-import { useActing } from '../lib/session/session.ts';
+import { useActing, useZone } from '../lib/session/session.ts';
 import { usePageTitle } from '../lib/use-page-title.ts';
 
 /** What needs the person in this role, oldest first, each with its one action; below it the study's figures. */
 export function NowPage() {
-  const { studyCode, studyName, sites } = useActing();
+  const { studyCode, studyName } = useActing();
+  const zone = useZone();
   usePageTitle(`Now · ${studyCode}`);
   const query = useQuery(nowQuery(studyCode));
-  const moment = formatMoment(new Date().toISOString(), sites.length === 1 ? sites[0]?.zone : undefined);
+  const moment = formatMoment(new Date().toISOString(), zone);
   return (
     <>
       <PageHead title="What needs you now" note={`${studyName} · ${moment}`} />

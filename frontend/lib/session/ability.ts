@@ -9,13 +9,11 @@ import {
   type SubjectName,
 } from '#schemas/abilities/ability.ts';
 
-export type PackedRules = PackRule<AppRule>[];
-
 export const AbilityContext = createContext<AppAbility>(noAbility());
 
 /** The ability that the server's packed rules describe. It shows or hides; the server decides. */
-export const abilityFrom = (rules: PackedRules): AppAbility =>
-  createMongoAbility<AppAbility>(unpackRules(rules));
+export const abilityFrom = (rules: unknown[]): AppAbility =>
+  createMongoAbility<AppAbility>(unpackRules(rules as PackRule<AppRule>[]));
 
 /**
  * Asks what the actor may do: about a loaded row, or without one "at least one such thing?".

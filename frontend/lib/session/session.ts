@@ -1,39 +1,16 @@
 import { queryOptions } from '@tanstack/react-query';
 import { createContext, useContext } from 'react';
-import type { Role } from '#schemas/vocabulary/roles.ts';
+import type { SessionDto } from '#schemas/api/accounts.ts';
 import { api, ApiProblem } from '../api.ts';
-import type { PackedRules } from './ability.ts';
 
-export interface SessionSite {
-  id: string;
-  code: string;
-  name: string;
-  /** IANA zone, for times taken there. */
-  zone?: string;
-}
-
-export interface SessionMembership {
-  membershipId: string;
-  /** Null for the administrator, who belongs to no study. */
-  studyCode: string | null;
-  studyName: string | null;
-  role: Role;
-  sites: SessionSite[];
-  unblinded: boolean;
-}
-
-export interface Session {
-  person: { id: string; name: string; email: string };
-  memberships: SessionMembership[];
-  /** The membership acted in; null until one is chosen. */
-  acting: SessionMembership | null;
-  /** The actor's rules, packed by CASL; the server applies the same ones and has the last word. */
-  rules: PackedRules;
+/** Who is signed in, what they may be, what they are now. */
+export interface Session extends SessionDto {
   /** Base64 of 32 bytes that only this person is given: seals what waits on the device. */
   deviceKey?: string;
-  /** Minutes without a request after which the server ends the session. */
-  idleMinutes?: number;
 }
+
+export type Acting = NonNullable<Session['acting']>;
+export type Membership = Session['memberships'][number];
 
 /** `null` when nobody is signed in. */
 export const sessionQuery = queryOptions({
@@ -59,9 +36,15 @@ export function useSession(): Session {
 }
 
 /** The study and role acted in. On pages below `/studies/:studyCode`. */
-export function useActing(): SessionMembership & { studyCode: string; studyName: string } {
+export function useActing(): Acting & { studyCode: string; studyName: string } {
   const { acting } = useSession();
   const { studyCode, studyName } = acting ?? {};
   if (!acting || !studyCode) throw new Error('useActing is used outside of a study');
   return { ...acting, studyCode, studyName: studyName ?? studyCode };
+}
+
+/** The zone in which times are shown: the site's where there is one site, else this device's. */
+export function useZone(): string | undefined {
+  const { acting } = useSession();
+  return acting?.sites.length === 1 ? acting.sites[0]?.timeZone : undefined;
 }
