@@ -23,6 +23,7 @@ export const actKinds = {
   'identifiers-written': 'wrote direct identifiers',
   'identifiers-read': 'read direct identifiers',
   'consent-recorded': 'recorded consent',
+  'eligibility-confirmed': 'confirmed that the criteria are met',
   'participant-withdrawn': 'recorded a withdrawal',
   'allocation-sealed': 'sealed the allocation list',
   'allocation-assigned': 'assigned an allocation',

@@ -1,4 +1,5 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/postgresql';
+import { earlierDataChoices } from '#schemas/participants/withdrawal.ts';
 import { participantStates } from '#schemas/vocabulary/states.ts';
 import { id, oneOf, revision } from '#backend/database/columns.ts';
 import { audited } from '#backend/database/audited.ts';
@@ -22,7 +23,12 @@ export const ParticipantSchema = defineEntity({
     enrolledOn: p.date(),
     consentedOn: p.date().nullable(),
     consentVersion: p.string().length(40).nullable(),
+    /** When the criteria for taking part were checked and met; nothing is allocated before. */
+    eligibleOn: p.date().nullable(),
     withdrawnOn: p.date().nullable(),
+    earlierData: oneOf(earlierDataChoices).nullable(),
+    /** Whether adverse events may still be followed up after a withdrawal. */
+    safetyFollowUp: p.boolean().nullable(),
     protocolVersionId: () => p.manyToOne(ProtocolVersionSchema).mapToPk().fieldName('protocol_version_id'),
     revision: revision(),
   },

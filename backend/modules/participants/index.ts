@@ -1,0 +1,1 @@
+export { assertConsented, recordConsent } from './consent.ts';
