@@ -1,0 +1,38 @@
+import ucum from '@lhncbc/ucum-lhc';
+import { units } from '#schemas/vocabulary/units.ts';
+
+/** What authors write for units that they know by another name. */
+const slips: Record<string, string> = {
+  bpm: '/min',
+  'beats/min': '/min',
+  cmh2o: 'cm[H2O]',
+  fraction: 'L/L',
+  kpa: 'kPa',
+  'ml/100ml/min': 'mL/min/dL',
+  'ml/min/100ml': 'mL/min/dL',
+  mmhg: 'mm[Hg]',
+  mpas: 'mPa.s',
+  percent: '%',
+  'wood units': "[wood'U]",
+  year: 'a',
+  years: 'a',
+  '°': 'deg',
+  '°c': 'Cel',
+  celsius: 'Cel',
+};
+
+/**
+ * Why a unit is refused, with the code that was probably meant; nothing when it is valid UCUM (IV-09).
+ * Stricter than the package in one point: it takes `mL/100mL/min`, where a digit meets a letter.
+ */
+export function unitProblem(code: string): string | undefined {
+  const verdict = ucum.UcumLhcUtils.getInstance().validateUnitString(code, true);
+  const digitMeetsLetter = /\d[A-Za-z]/.test(code.replaceAll(/\[[^\]]*\]|\{[^}]*\}/g, ''));
+  if (verdict.status === 'valid' && !digitMeetsLetter) return undefined;
+  const meant = slips[code.toLowerCase()] ?? shownAs(code) ?? verdict.suggestions?.[0]?.units[0]?.[0];
+  return `${code} is not a UCUM code${meant === undefined ? '' : `: write ${meant}`}`;
+}
+
+function shownAs(code: string): string | undefined {
+  return units.find(({ shown }) => shown.toLowerCase() === code.toLowerCase())?.code;
+}
