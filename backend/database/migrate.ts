@@ -7,7 +7,8 @@ import { migrationsList } from './migrations/list.ts';
  * @throws when the newest migration is not in the database afterwards: an empty list is no success
  */
 export async function migrate(ownerUrl: string): Promise<string[]> {
-  const orm = await MikroORM.init({ ...config, clientUrl: ownerUrl, pool: { min: 1, max: 4 } });
+  const quiet = { logger: () => undefined }; // the caller tells what was applied
+  const orm = await MikroORM.init({ ...config, ...quiet, clientUrl: ownerUrl, pool: { min: 1, max: 4 } });
   const lock = (await orm.em.getKnex().client.acquireConnection()) as {
     query: (sql: string) => Promise<unknown>;
   };
