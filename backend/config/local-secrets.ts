@@ -1,7 +1,12 @@
 import { randomBytes } from 'node:crypto';
 import { mkdirSync, readFileSync, renameSync, writeFileSync } from 'node:fs';
-import { join } from 'node:path';
+import { join, resolve } from 'node:path';
 import { StartError } from './start-error.ts';
+
+/** Where the services of our own keep their data; `.data` in the project unless DATA_FOLDER says otherwise. */
+export function dataFolderOf(environment: Readonly<Record<string, string | undefined>>): string {
+  return resolve(environment['DATA_FOLDER'] || join(import.meta.dirname, '../../.data'));
+}
 
 /** Gives a secret of 32 random bytes, base64url, the same one at every start. */
 export type LocalSecrets = (name: string) => string;

@@ -22,6 +22,7 @@ const required = (name: string, fallback: string, purpose: string): SettingRow =
 /** Every setting there is, each an environment variable. */
 export const settingTable: readonly SettingRow[] = [
   row('NODE_ENV', 'development', '`production` refuses demo data, local services and missing secrets'),
+  row('DATA_FOLDER', '.data', 'where the services of our own keep their data and secrets'),
   row('HOST', '127.0.0.1', 'address to listen on'),
   row('PORT', '4680', 'port to listen on; 0 takes a free one'),
   required('PUBLIC_URL', 'http://HOST:PORT', 'where browsers find the application; base of links in mail'),
