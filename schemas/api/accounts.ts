@@ -1,7 +1,6 @@
 import type { FromSchema } from 'json-schema-to-ts';
 import { roles } from '../vocabulary/roles.ts';
 
-const email = { type: 'string', format: 'email', maxLength: 254 } as const;
 const uuid = { type: 'string', format: 'uuid' } as const;
 const object = { type: 'object', additionalProperties: false } as const;
 
@@ -19,13 +18,6 @@ export const actingBody = {
 } as const;
 export type ActingBody = FromSchema<typeof actingBody>;
 
-export const acceptInvitationBody = {
-  ...object,
-  required: ['password', 'acceptDeclaration'],
-  properties: { password: { type: 'string', maxLength: 1024 }, acceptDeclaration: { const: true } },
-} as const;
-export type AcceptInvitationBody = FromSchema<typeof acceptInvitationBody>;
-
 export const membershipDto = {
   ...object,
   required: ['id', 'studyCode', 'studyName', 'role', 'siteIds', 'unblinded'],
@@ -42,7 +34,7 @@ export type MembershipDto = FromSchema<typeof membershipDto>;
 
 export const sessionDto = {
   ...object,
-  required: ['person', 'memberships', 'acting', 'rules'],
+  required: ['person', 'memberships', 'acting', 'rules', 'deviceKey'],
   properties: {
     person: {
       ...object,
@@ -83,6 +75,8 @@ export const sessionDto = {
     },
     /** Packed rules of the ability acted with, the same that the server asks. */
     rules: { type: 'array' },
+    /** Base64 of 32 bytes, this person's alone: seals what waits on the device (WS-13). */
+    deviceKey: { type: 'string' },
   },
 } as const;
 
@@ -99,35 +93,7 @@ export interface SessionDto {
     unblinded: boolean;
   } | null;
   rules: unknown[];
-}
-
-export const invitePersonBody = {
-  ...object,
-  required: ['email', 'name'],
-  properties: {
-    email,
-    name: { type: 'string', minLength: 1, maxLength: 120, pattern: '^[^\\u0000-\\u001f\\u007f]+$' },
-  },
-} as const;
-export type InvitePersonBody = FromSchema<typeof invitePersonBody>;
-
-export const grantMembershipBody = {
-  ...object,
-  required: ['personId', 'studyCode', 'role', 'siteIds', 'unblinded'],
-  properties: {
-    personId: uuid,
-    studyCode: { type: 'string', maxLength: 40 },
-    role: { enum: roles.filter((role) => role !== 'administrator') },
-    siteIds: { anyOf: [{ type: 'null' }, { type: 'array', items: uuid, minItems: 1 }] },
-    unblinded: { type: 'boolean' },
-  },
-} as const;
-export interface GrantMembershipBody {
-  personId: string;
-  studyCode: string;
-  role: Exclude<(typeof roles)[number], 'administrator'>;
-  siteIds: string[] | null;
-  unblinded: boolean;
+  deviceKey?: string;
 }
 
 export const reasonBody = {
@@ -136,27 +102,6 @@ export const reasonBody = {
   properties: { reason: { type: 'string', minLength: 3, maxLength: 2000, pattern: '\\S.*\\S' } },
 } as const;
 export type ReasonBody = FromSchema<typeof reasonBody>;
-
-export const personDto = {
-  ...object,
-  required: ['id', 'name', 'email', 'status', 'revision', 'memberships'],
-  properties: {
-    id: uuid,
-    name: { type: 'string' },
-    email: { type: 'string' },
-    status: { enum: ['invited', 'active', 'deactivated'] },
-    revision: { type: 'integer' },
-    memberships: { type: 'array', items: membershipDto },
-  },
-} as const;
-export interface PersonDto {
-  id: string;
-  name: string;
-  email: string;
-  status: 'invited' | 'active' | 'deactivated';
-  revision: number;
-  memberships: MembershipDto[];
-}
 
 export const statusDto = {
   ...object,

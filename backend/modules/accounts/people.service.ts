@@ -2,7 +2,7 @@ import type { EntityManager } from '@mikro-orm/postgresql';
 import { act, systemChain } from '#backend/database/act.ts';
 import { currentPersonId } from '#backend/http/actor.ts';
 import { assertRevision } from '#backend/http/preconditions.ts';
-import { Problem, stateForbids } from '#backend/http/problem.ts';
+import { notFound, Problem, stateForbids } from '#backend/http/problem.ts';
 import { queueMail } from '#backend/jobs/mail/outbox.ts';
 import { MembershipSchema } from './membership.entity.ts';
 import { invitationHours, openLink, resetMinutes } from './one-time-link.ts';
@@ -37,7 +37,7 @@ export const invitePerson = (em: EntityManager, { email, name }: NewPerson): Pro
 /** Sends the invitation once more; the link sent before no longer works. */
 export const inviteAgain = (em: EntityManager, personId: string): Promise<Person> =>
   act(em, aboutPerson('person-invited'), async (tx) => {
-    const person = await tx.findOneOrFail(PersonSchema, personId);
+    const person = await knownPerson(tx, personId);
     if (person.status !== 'invited')
       throw stateForbids('This invitation was accepted; start a password reset.');
     await mailInvitation(tx, person);
@@ -47,7 +47,7 @@ export const inviteAgain = (em: EntityManager, personId: string): Promise<Person
 /** Mails a link at which its owner chooses a new password; nobody else ever sets or sees one (ES-04). */
 export const startPasswordReset = (em: EntityManager, personId: string): Promise<Person> =>
   act(em, aboutPerson('password-reset-started'), async (tx) => {
-    const person = await tx.findOneOrFail(PersonSchema, personId);
+    const person = await knownPerson(tx, personId);
     if (person.status !== 'active') throw stateForbids('Only an active account has a password to reset.');
     const path = await openLink(tx, person.id, 'password-reset');
     await queueMail(tx, {
@@ -66,7 +66,7 @@ export const deactivatePerson = (
   { reason }: { reason: string },
 ): Promise<Person> =>
   act(em, aboutPerson('person-deactivated', reason), async (tx) => {
-    const person = await tx.findOneOrFail(PersonSchema, personId);
+    const person = await knownPerson(tx, personId);
     assertRevision(person, seenRevision);
     if (person.status === 'deactivated') throw stateForbids('This account is deactivated already.');
     if (person.id === currentPersonId())
@@ -105,6 +105,9 @@ export const inviteFirstAdministrator = async (
   });
   return { path, validHours: invitationHours };
 };
+
+const knownPerson = (tx: EntityManager, id: string): Promise<Person> =>
+  tx.findOneOrFail(PersonSchema, id, { failHandler: () => notFound('This person') });
 
 async function addPerson(tx: EntityManager, { email, name, passwordHash }: NewPerson): Promise<Person> {
   const address = email.toLowerCase();

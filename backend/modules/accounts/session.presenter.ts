@@ -1,7 +1,9 @@
 import { packRules } from '@casl/ability/extra';
 import type { EntityManager } from '@mikro-orm/postgresql';
+import { createHmac } from 'node:crypto';
 import { abilityFor } from '#schemas/abilities/ability.ts';
 import type { MembershipDto, SessionDto } from '#schemas/api/accounts.ts';
+import type { Deps } from '#backend/http/deps.ts';
 import { notFound } from '#backend/http/problem.ts';
 import { SiteSchema } from '../studies/site.entity.ts';
 import { StudySchema, type Study } from '../studies/study.entity.ts';
@@ -19,7 +21,7 @@ export const presentMembership = (membership: Membership, study: Study | undefin
 
 /** Who is signed in, what they may be, and what they are now. */
 export async function presentSession(
-  em: EntityManager,
+  { orm: { em }, settings }: Deps,
   personId: string,
   actingId: string | null | undefined,
 ): Promise<SessionDto> {
@@ -42,8 +44,13 @@ export async function presentSession(
     ...(acting === undefined
       ? { acting: null, rules: [] }
       : await presentActing(em, acting, studyOf(acting))),
+    deviceKey: deviceKeyOf(settings.sessionSecret, person.id),
   };
 }
+
+/** Made anew at each sign-in and kept nowhere: without it nobody reads what one person left on a shared tablet. */
+const deviceKeyOf = (secret: string, personId: string): string =>
+  createHmac('sha256', secret).update(`device key ${personId}`).digest('base64');
 
 async function presentActing(
   em: EntityManager,

@@ -7,6 +7,7 @@ import type { Deps } from '#backend/http/deps.ts';
 import { notFound } from '#backend/http/problem.ts';
 import type { RouteTable } from '#backend/http/route.ts';
 import { demoAccounts } from './demo-accounts.ts';
+import { fromCallback } from './from-callback.ts';
 import { MembershipSchema } from './membership.entity.ts';
 import { PersonSchema } from './person.entity.ts';
 import { presentSession } from './session.presenter.ts';
@@ -40,7 +41,7 @@ export function declareSessionRoutes({ route }: RouteTable, deps: Deps): void {
     handler: async (request, response) => {
       const person = await signIn(request);
       request.session.membershipId = await onlyMembership(person.id);
-      response.status(201).json(await presentSession(orm.em, person.id, request.session.membershipId));
+      response.status(201).json(await presentSession(deps, person.id, request.session.membershipId));
     },
   });
 
@@ -52,7 +53,7 @@ export function declareSessionRoutes({ route }: RouteTable, deps: Deps): void {
     responds: { status: 200, body: sessionDto },
     acts: null,
     handler: async (request, response) => {
-      response.json(await presentSession(orm.em, currentPersonId(), request.session.membershipId));
+      response.json(await presentSession(deps, currentPersonId(), request.session.membershipId));
     },
   });
 
@@ -74,7 +75,7 @@ export function declareSessionRoutes({ route }: RouteTable, deps: Deps): void {
       });
       if (membership === null) throw notFound('This membership');
       await renewSession(request, membership.id);
-      response.json(await presentSession(orm.em, personId, membership.id));
+      response.json(await presentSession(deps, personId, membership.id));
     },
   });
 
@@ -121,18 +122,12 @@ export function declareSessionRoutes({ route }: RouteTable, deps: Deps): void {
 }
 
 /** A new session id whenever what one may do changes (WS-04); `logIn` regenerates it. */
-function renewSession(request: Request, membershipId: string): Promise<void> {
-  const { epoch, signedInAt } = request.session;
-  return new Promise((resolve, reject) => {
-    request.logIn(request.user as Express.User, (error?: unknown) => {
-      if (error) return reject(error);
-      Object.assign(request.session, { epoch, signedInAt, membershipId });
-      resolve();
-    });
-  });
+async function renewSession(request: Request, membershipId: string): Promise<void> {
+  const { user, session } = request;
+  if (user === undefined) throw new Error('Nobody is signed in.');
+  const { epoch, signedInAt } = session;
+  await fromCallback((done) => request.logIn(user, done));
+  Object.assign(request.session, { epoch, signedInAt, membershipId });
 }
 
-const endSession = (request: Request): Promise<void> =>
-  new Promise((resolve, reject) => {
-    request.session.destroy((error: unknown) => (error ? reject(error) : resolve()));
-  });
+const endSession = (request: Request): Promise<void> => fromCallback((done) => request.session.destroy(done));

@@ -7,6 +7,7 @@ import { runAs } from '#backend/http/actor.ts';
 import type { Deps } from '#backend/http/deps.ts';
 import { Problem } from '#backend/http/problem.ts';
 import { rateLimit } from '#backend/http/rate-limit.ts';
+import { fromCallback } from './from-callback.ts';
 import { passwordMatches } from './password.ts';
 import { asPerson, asSystem } from './person-actor.ts';
 import { PersonSchema, type Person } from './person.entity.ts';
@@ -68,20 +69,21 @@ async function checkPassword(em: EntityManager, email: string, password: string)
   return right && person?.status === 'active' ? person : null;
 }
 
-const authenticate = (request: Request): Promise<Person | false> =>
-  new Promise((resolve, reject) => {
+async function authenticate(request: Request): Promise<Person | false> {
+  let found: Person | false = false;
+  await fromCallback((done) => {
     const callback = (error: unknown, person: Person | false | undefined): void => {
-      if (error) reject(error);
-      else resolve(person || false);
+      found = person || false;
+      done(error);
     };
-    (passport.authenticate('local', callback) as (...args: unknown[]) => void)(request, request.res, reject);
+    (passport.authenticate('local', callback) as (...args: unknown[]) => void)(request, request.res, done);
   });
+  return found;
+}
 
 /** `logIn` regenerates the session: a session id known before sign-in is worth nothing after it. */
 const logIn = (request: Request, person: Person): Promise<void> =>
-  new Promise((resolve, reject) => {
-    request.logIn(person, (error?: unknown) => (error ? reject(error) : resolve()));
-  });
+  fromCallback((done) => request.logIn(person, done));
 
 /** A refused try is on record under the account it was aimed at; an address without one leaves no trace of whether it exists. */
 async function recordRefusal(em: EntityManager, email: string): Promise<void> {
