@@ -6,6 +6,9 @@
 export interface JobData {
   'mail.send': { mailId: string };
   tidy: Record<string, never>;
+  'cut.build': { studyId: string; kind: 'rehearsal' | 'final'; personId: string; jobKey: string };
+  'run.execute': { studyId: string; runId: string; jobKey: string };
+  'export.build': { studyId: string; exportId: string; jobKey: string };
   dead: { jobKey?: string; mailId?: string };
 }
 
@@ -28,6 +31,9 @@ export const queues: Readonly<Record<QueueName, QueueOptions>> = {
   [deadLetter]: { retryLimit: 5, retryDelay: 5, retryBackoff: true },
   // Doubling from half a minute spans most of a day: a mail server that is down overnight loses nothing.
   tidy: { retryLimit: 2, retryDelay: 60, retryBackoff: false, cron: '17 3 * * *' },
+  'cut.build': { retryLimit: 2, retryDelay: 2, retryBackoff: true },
+  'run.execute': { retryLimit: 2, retryDelay: 2, retryBackoff: true },
+  'export.build': { retryLimit: 2, retryDelay: 2, retryBackoff: true },
   'mail.send': { retryLimit: 10, retryDelay: 30, retryBackoff: true },
 };
 

@@ -1,7 +1,7 @@
 import { defineEntity, p, type InferEntity } from '@mikro-orm/postgresql';
 import { id, json, revision } from '#backend/database/columns.ts';
 import { audited } from '#backend/database/audited.ts';
-import type { StudyPlan } from '#schemas/api/plans.ts';
+import type { StudyPlan } from '#analysis/study/study-plan.ts';
 import { PersonSchema } from '../accounts/person.entity.ts';
 import { StudySchema } from '../studies/study.entity.ts';
 
