@@ -1,10 +1,11 @@
 import type { ExpressionCompiler } from '../expressions/expression.ts';
 import type { ExpressionType } from '../expressions/expression-types.ts';
+import { sameUnit } from '../vocabulary/units.ts';
 import { nearestWord } from '../expressions/nearest-word.ts';
 import type { CompiledDerivation, CompiledField } from './compiled-instrument.ts';
 import type { FoundField } from './expand-fields.ts';
 import type { InstrumentProblem, QuantityInput } from './instrument.ts';
-import type { LibraryQuantity, QuantityLibrary } from './quantity-library.ts';
+import type { LibraryQuantity, QuantityInputDefinition, QuantityLibrary } from './quantity-library.ts';
 
 type Fields = Map<string, CompiledField>;
 
@@ -41,7 +42,13 @@ export function compileDerivations(
         continue;
       }
       const inputs = expression.dependencies.map(pointerOf);
-      derivations.set(pointer, { pointer, inputs, rule: { kind: 'expression', expression }, level: 'open' });
+      derivations.set(pointer, {
+        pointer,
+        inputs,
+        optional: [],
+        rule: { kind: 'expression', expression },
+        level: 'open',
+      });
       continue;
     }
     const { quantity, inputs } = schema.derive;
@@ -54,6 +61,10 @@ export function compileDerivations(
     derivations.set(pointer, {
       pointer,
       inputs: Object.values(inputs).filter((input) => typeof input === 'string'),
+      optional: known.inputs.flatMap(({ name, optional }) => {
+        const input = inputs[name];
+        return optional && typeof input === 'string' ? [input] : [];
+      }),
       rule: { kind: 'quantity', quantity, version: known.version, inputs },
       level: 'open',
     });
@@ -75,7 +86,7 @@ function quantityProblems(
 ): InstrumentProblem[] {
   const problems: InstrumentProblem[] = [];
   const names = known.inputs.map(({ name }) => name);
-  if (field.unit !== known.unit) {
+  if (!sameUnit(field.unit, known.unit)) {
     problems.push({
       pointer: place,
       message: `The quantity has the unit ${known.unit}, the field ${field.unit ?? 'none'}`,
@@ -92,12 +103,13 @@ function quantityProblems(
     const input = inputs[needed.name];
     const pointer = `${place}/inputs/${needed.name}`;
     if (input === undefined) {
+      if (needed.optional) continue;
       problems.push({
         pointer: `${place}/inputs`,
         message: `The input ${needed.name} (${needed.unit}) is missing`,
       });
     } else if (typeof input !== 'string') {
-      if (input.unit !== needed.unit) problems.push({ pointer, message: wrongUnit(needed, input.unit) });
+      if (!takesUnit(needed, input.unit)) problems.push({ pointer, message: wrongUnit(needed, input.unit) });
     } else {
       const source = fields.get(input);
       if (!source) problems.push({ pointer, message: `There is no field ${input}` });
@@ -110,6 +122,10 @@ function quantityProblems(
     }
   }
   return problems;
+}
+
+function takesUnit({ unit, accepts }: QuantityInputDefinition, given: string | undefined): boolean {
+  return sameUnit(unit, given) || (given !== undefined && (accepts?.(given) ?? false));
 }
 
 function wrongUnit(needed: { name: string; unit: string }, given: string | undefined): string {

@@ -16,7 +16,7 @@ export interface CompiledInstrument {
   schema: InstrumentSchema;
   /** In reading order, derived ones included. */
   fields: CompiledField[];
-  field(pointer: string): CompiledField | undefined;
+  field: (pointer: string) => CompiledField | undefined;
   /** In an order in which each finds its inputs computed. */
   derivations: CompiledDerivation[];
   checks: CompiledCheck[];
@@ -64,6 +64,8 @@ export interface CompiledDerivation {
   pointer: string;
   /** Pointers of the fields it reads. */
   inputs: string[];
+  /** Those of them without which it is computed all the same. */
+  optional: string[];
   rule: DerivationRule;
   level: Level;
 }

@@ -1,4 +1,5 @@
 import type { ExpressionScope } from '../expressions/expression-types.ts';
+import { sameUnit } from '../vocabulary/units.ts';
 import type { CompiledDerivation, CompiledField, CompiledInstrument } from './compiled-instrument.ts';
 import type { EntryValues } from './entry-values.ts';
 import type { QuantityCaution, QuantityLibrary } from './quantity-library.ts';
@@ -71,7 +72,8 @@ function deriveOne(
         ? { id: rule.quantity, version: rule.version }
         : { id: `expression ${rule.expression.text}`, version: expressionRules },
   };
-  const absent = sources.filter((source) => fieldValue(compiled, source, known) === undefined);
+  const needed = sources.filter(({ pointer }) => !derivation.optional.includes(pointer));
+  const absent = needed.filter((source) => fieldValue(compiled, source, known) === undefined);
   if (absent.length > 0) {
     const message = `Waits for ${absent.map(({ label }) => label).join(', ')}`;
     return { ...kept, missing: 'input-missing', names: absent.map(({ pointer }) => pointer), message };
@@ -119,10 +121,12 @@ function computeQuantity(
     const source = typeof input === 'string' ? compiled.field(input) : undefined;
     if (!source) continue;
     const value = array ? fieldValue(compiled, source, known) : fieldNumber(compiled, source, known);
-    if (value !== undefined) given[name] = { value: value as number | number[], unit };
+    if (value !== undefined) given[name] = { value: value as number | number[], unit: source.unit ?? unit };
   }
   try {
-    const { value, cautions } = definition.compute(given);
+    const { value, unit, cautions } = definition.compute(given);
+    if (!sameUnit(unit, definition.unit))
+      return { problem: `The result is in ${unit}, not in ${definition.unit}` };
     if (!Number.isFinite(value)) return { problem: 'The result is not a finite number' };
     return { value, cautions };
   } catch (error) {

@@ -1,6 +1,6 @@
 /** A quantity of the analysis library as an instrument sees it. */
 export interface LibraryQuantity {
-  inputs: { name: string; unit: string; array?: boolean }[];
+  inputs: QuantityInputDefinition[];
   unit: string;
   version: string;
   /** Throws an error whose message is for a person when no number may come out. */
@@ -9,6 +9,16 @@ export interface LibraryQuantity {
     unit: string;
     cautions: QuantityCaution[];
   };
+}
+
+export interface QuantityInputDefinition {
+  name: string;
+  unit: string;
+  /** Takes the readings themselves, not their summary. */
+  array?: boolean;
+  optional?: boolean;
+  /** Whether a value in another unit can be brought to this one by the quantity; absent: only the same unit. */
+  accepts?: (unit: string) => boolean;
 }
 
 export interface QuantityCaution {

@@ -55,3 +55,9 @@ export function shownUnit(code: string): { shown: string; factor: number } {
   );
   return unit ? { shown: unit.shown, factor: unit.factor ?? 1 } : { shown: code, factor: 1 };
 }
+
+/** Whether two codes write the same unit, so that a value needs no conversion: a fraction is a plain ratio. */
+export function sameUnit(a: string | undefined, b: string | undefined): boolean {
+  const plain = (code: string | undefined) => (code === 'L/L' ? '1' : code);
+  return plain(a) === plain(b);
+}
