@@ -17,7 +17,7 @@ export interface ModelRows {
 }
 
 /** Columns of the fixed terms and of the random slope, each once, in the plan's order. */
-export function modelColumns(plan: Plan): string[] {
+function modelColumns(plan: Plan): string[] {
   return [...new Set([...(plan.fixed ?? []).flat(), ...(plan.random?.slopes ?? [])])];
 }
 

@@ -8,7 +8,7 @@ import { logColumnUnits } from '../mixed-model/design-coefficients.ts';
 import { fitMixedModel, type MixedModelFit } from '../mixed-model/fit.ts';
 import { fixedDesign, type FixedDesign } from '../mixed-model/fixed-design.ts';
 import { inferenceOf } from '../mixed-model/inference.ts';
-import { linearMixedModelRows, modelColumns, type ModelRows } from './linear-mixed-model-rows.ts';
+import { linearMixedModelRows, type ModelRows } from './linear-mixed-model-rows.ts';
 import {
   anovaTable,
   fixedEffectsTable,

@@ -10,7 +10,9 @@ import { geometricMeanRatio } from './geometric-mean-ratio.ts';
 import { groupShare } from './group-share.ts';
 import { icc } from './icc.ts';
 import { linearMixedModel } from './linear-mixed-model.ts';
+import { mixedAnova } from './mixed-anova.ts';
 import { multiplicity } from './multiplicity.ts';
+import { oneWayRmAnova } from './one-way-rm-anova.ts';
 import { pairedDeltaAdjusted } from './paired-delta-adjusted.ts';
 import { pairedT } from './paired-t.ts';
 import { permutationPaired } from './permutation-paired.ts';
@@ -19,13 +21,16 @@ import { powerPairedT } from './power-paired-t.ts';
 import { repeatability } from './repeatability.ts';
 import { shapiroWilk } from './shapiro-wilk.ts';
 import { signTest } from './sign-test.ts';
+import { twoWayRmAnova } from './two-way-rm-anova.ts';
 import { wilcoxonSignedRank } from './wilcoxon-signed-rank.ts';
 
 const list: readonly Method[] = [
   pairedT,
   wilcoxonSignedRank,
   signTest,
-  // Variance, linear and mixed models go here, one a line.
+  oneWayRmAnova,
+  twoWayRmAnova,
+  mixedAnova,
   linearMixedModel,
   friedman,
   blandAltman,
