@@ -131,8 +131,15 @@ function computeQuantity(
     return { value, cautions };
   } catch (error) {
     // A quantity refuses by throwing: no number may come out, and the reason is for the person at the screen.
-    return { problem: error instanceof Error ? error.message : String(error) };
+    return { problem: refusal(error) };
   }
+}
+
+function refusal(error: unknown): string {
+  if (!(error instanceof Error)) return String(error);
+  return 'remedy' in error && typeof error.remedy === 'string'
+    ? `${error.message} ${error.remedy}`
+    : error.message;
 }
 
 /** A summary of fewer readings than the rule asks for is shown while they come in, and says so. */

@@ -30,3 +30,72 @@ export interface QuantityCaution {
 export interface QuantityLibrary {
   get(name: string): LibraryQuantity | undefined;
 }
+
+/** A definition of the analysis library, as far as it is read here. */
+interface QuantitySource {
+  version: number;
+  unit: string;
+  inputs: Readonly<Record<string, InputSource>>;
+  derive(given: Record<string, { value: number | number[]; unit: string }>): {
+    value: number;
+    unit: string;
+    cautions: readonly QuantityCaution[];
+  };
+}
+
+interface InputSource {
+  name: string;
+  unit: string;
+  arity: 'one' | 'optional' | 'many';
+  default?: number;
+  /** `convert`: any unit of the dimension; `keep`: of one of the samples; `same`: it follows another input. */
+  rule: { kind: 'convert' } | { kind: 'keep'; samples: readonly string[] } | { kind: 'same' };
+}
+
+/**
+ * Makes the library of an instrument from the one of the analysis, for server and browser alike.
+ *
+ * @param find a quantity by its name
+ * @param sameDimension whether two UCUM codes measure the same; throws for a code that it does not know
+ */
+export function quantityLibrary(
+  find: (name: string) => QuantitySource | undefined,
+  sameDimension: (one: string, other: string) => boolean,
+): QuantityLibrary {
+  const measuresSame = (one: string, other: string) => {
+    try {
+      return sameDimension(one, other);
+    } catch {
+      return false; // A unit that the analysis does not know cannot be converted by it.
+    }
+  };
+  const accepts = ({ unit, rule }: InputSource, given: string) => {
+    if (rule.kind === 'convert') return measuresSame(unit, given);
+    return (
+      rule.kind === 'same' ||
+      rule.samples.length === 0 ||
+      rule.samples.some((one) => measuresSame(one, given))
+    );
+  };
+  return {
+    get(name) {
+      const source = find(name);
+      if (!source) return undefined;
+      return {
+        unit: source.unit,
+        version: String(source.version),
+        inputs: Object.values(source.inputs).map((input) => ({
+          name: input.name,
+          unit: input.unit,
+          array: input.arity === 'many',
+          optional: input.arity === 'optional' || input.default !== undefined,
+          accepts: (given) => accepts(input, given),
+        })),
+        compute(inputs) {
+          const { value, unit, cautions } = source.derive(inputs);
+          return { value, unit, cautions: cautions.map(({ code, message }) => ({ code, message })) };
+        },
+      };
+    },
+  };
+}
