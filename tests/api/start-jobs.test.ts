@@ -12,7 +12,10 @@ import { startTestServer, type TestServer } from '#tests/support/server.ts';
 
 /** Queues of this test only: the product's names are closed, so these are passed as one of them. */
 const trial = 'trial.work' as QueueName as 'dead';
-const trialQueues = { dead: retries(0), [trial]: retries(2) };
+const trialQueues = Object.fromEntries([
+  ['dead', retries(0)],
+  [trial, retries(2)],
+]);
 const brisk: Partial<QueueTiming> = { poll: 0.05, beat: 0.2, stale: 1, sweep: 0.2, grace: 0.5 };
 
 function retries(retryLimit: number) {

@@ -14,6 +14,7 @@ import {
   startCluster,
   stopPostmaster,
   type Cluster,
+  type Postmaster,
 } from './cluster.ts';
 import { appRole, ensureAppRole, ensureDatabase, localUrl } from './roles.ts';
 
@@ -32,14 +33,27 @@ export async function startLocalPostgres(
   say: Say,
 ): Promise<LocalPostgres> {
   const cluster = await findCluster(dataFolder, say);
-  const ownerPassword = secrets('databaseOwnerPassword');
   if (!existsSync(join(cluster.folder, 'PG_VERSION'))) {
     await refuseForeignFolder(cluster.folder);
     say(`making a database in ${cluster.folder}`);
-    await makeCluster(cluster, ownerPassword);
+    await makeCluster(cluster, secrets('databaseOwnerPassword'));
   }
-  const postmaster = (await runningPostmaster(cluster)) ?? (await startCluster(cluster));
-  const appPassword = secrets('databaseAppPassword');
+  const joined = await runningPostmaster(cluster);
+  const postmaster = joined ?? (await startCluster(cluster));
+  try {
+    return await open(cluster, postmaster, { dataFolder, secrets });
+  } catch (error) {
+    if (!joined) await stopPostmaster(cluster.folder, postmaster);
+    throw error;
+  }
+}
+
+async function open(
+  cluster: Cluster,
+  postmaster: Postmaster,
+  { dataFolder, secrets }: { dataFolder: string; secrets: LocalSecrets },
+): Promise<LocalPostgres> {
+  const [ownerPassword, appPassword] = [secrets('databaseOwnerPassword'), secrets('databaseAppPassword')];
   // One connection is held for as long as we run: by it another start of this installation sees that we are here.
   const presence = await present(localUrl(postmaster, ownerRole, ownerPassword, 'postgres'), dataFolder);
   await ensureAppRole(presence, appPassword);
