@@ -1,10 +1,11 @@
 import type { EntityManager } from '@mikro-orm/postgresql';
+import { assertRevision } from '#backend/http/preconditions.ts';
 import type { HiddenValue, ValueDto } from '#schemas/api/capture.ts';
 import type { LoadedEntry } from './load-entry.ts';
 import { presentValue } from './present-value.ts';
 
 /** What others stored at an address after the revision that was seen: both values can be put side by side (DE-02). */
-export interface ChangedSince {
+interface ChangedSince {
   address: string;
   revision: number;
   by: string;
@@ -20,11 +21,7 @@ interface Row {
 }
 
 /** Addresses that moved since `seen`, each with who moved it last and what lies there now. */
-export async function changedSince(
-  em: EntityManager,
-  loaded: LoadedEntry,
-  seen: number,
-): Promise<ChangedSince[]> {
+async function changedSince(em: EntityManager, loaded: LoadedEntry, seen: number): Promise<ChangedSince[]> {
   const { entry, stored, instrument } = loaded;
   const rows = await em.execute<Row[]>(
     `select distinct on (change.key) change.key as address, revision.revision, person.name as by,
@@ -50,4 +47,10 @@ export async function changedSince(
         present: value === undefined ? null : presentValue(instrument.compiled, value),
       };
     });
+}
+
+/** 412 unless the entry is still at the revision that was seen, with what has moved since. */
+export async function assertFresh(em: EntityManager, loaded: LoadedEntry, seen: number): Promise<void> {
+  if (loaded.entry.revision === seen) return;
+  assertRevision(loaded.entry, seen, { changed: await changedSince(em, loaded, seen) });
 }

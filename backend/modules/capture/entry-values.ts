@@ -1,4 +1,5 @@
 import type { EntityManager } from '@mikro-orm/postgresql';
+import type { CompiledInstrument } from '#schemas/instruments/compiled-instrument.ts';
 import type { EntryValue, EntryValues } from '#schemas/instruments/entry-values.ts';
 import type { Derivation } from '#backend/database/trail/recorded-value.ts';
 import type { Entry } from './entry.entity.ts';
@@ -58,4 +59,9 @@ export function entryValues(stored: readonly StoredValue[]): EntryValues {
     if (value !== null && !redacted) values[address] = value;
   }
   return values;
+}
+
+/** What was entered, without what is computed from it. */
+export function enteredValues(compiled: CompiledInstrument, stored: readonly StoredValue[]): EntryValues {
+  return entryValues(stored.filter(({ address }) => compiled.field(address)?.derived !== true));
 }

@@ -22,14 +22,9 @@ import { accessible } from '#backend/database/row-filter.ts';
 import { EntrySchema } from './entry.entity.ts';
 import { entryHistory } from './entry-history.ts';
 import { presentEntry } from './entry.presenter.ts';
-import {
-  completeEntry,
-  correctEntry,
-  openLogEntry,
-  openStepEntry,
-  saveEntry,
-  voidEntry,
-} from './entry.service.ts';
+import { completeEntry, voidEntry } from './close-entry.ts';
+import { openLogEntry, openStepEntry } from './open-entry.ts';
+import { correctEntry, saveEntry } from './save-entry.ts';
 import { loadEntry, type LoadedEntry } from './load-entry.ts';
 
 const study = '/studies/:studyCode';

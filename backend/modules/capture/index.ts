@@ -4,7 +4,9 @@ import { declareEntryRoutes } from './entry.routes.ts';
 import { declareVisitRoutes } from './visit.routes.ts';
 
 export { entryValues, storedValues, type StoredValue } from './entry-values.ts';
-export { completeEntry, correctEntry, openLogEntry, openStepEntry, saveEntry } from './entry.service.ts';
+export { completeEntry } from './close-entry.ts';
+export { openLogEntry, openStepEntry } from './open-entry.ts';
+export { correctEntry, saveEntry } from './save-entry.ts';
 export { onCapture } from './hooks.ts';
 export { loadEntry, type LoadedEntry } from './load-entry.ts';
 export { visitMeasures, type StepValues, type VisitMeasure } from './measures.ts';

@@ -1,5 +1,6 @@
 import type { Operation } from '#schemas/api/capture.ts';
 import { parseAddress } from '#schemas/instruments/address.ts';
+import { operationProblem } from '#schemas/instruments/check-operation.ts';
 import { checkValues, type Finding } from '#schemas/instruments/check-values.ts';
 import type { CompiledInstrument } from '#schemas/instruments/compiled-instrument.ts';
 import { deriveValues, withDerived, type DerivedValue } from '#schemas/instruments/derive-values.ts';
@@ -29,8 +30,8 @@ export interface SavePlan {
   confirmed: Judged[];
   /** Everything computed from the values after the save. */
   derived: Record<string, DerivedValue>;
-  /** The values after the save, derived ones included. */
-  values: EntryValues;
+  /** What is entered after the save. */
+  entered: EntryValues;
 }
 
 export interface SaveRequest {
@@ -68,53 +69,20 @@ function readOperation(
   operation: Operation,
   judge: FieldJudge,
 ): Change | FieldProblem {
-  const address = parseAddress(operation.pointer);
-  const field = address && compiled.field(address.pointer);
-  if (address === undefined || field === undefined) {
-    return { pointer: '/pointer', detail: `${operation.pointer} is no field of ${compiled.title}` };
-  }
-  if (field.derived)
-    return { pointer: '/pointer', detail: `${field.label} is computed; it cannot be entered` };
-  if (
-    field.readings === undefined
-      ? address.reading !== undefined
-      : address.reading === undefined && operation.missing === undefined
-  ) {
-    const how = field.readings ? `name a reading: ${address.pointer}/0` : 'it has no single readings';
-    return { pointer: '/pointer', detail: `${field.label}: ${how}` };
-  }
-  if (field.readings && address.reading !== undefined && address.reading >= field.readings.most) {
-    return { pointer: '/pointer', detail: `${field.label} has at most ${field.readings.most} readings` };
-  }
-  if (operation.rejected !== undefined) {
-    const { rejected } = operation;
-    if (address.reading === undefined || !field.readings) {
-      return { pointer: '/rejected', detail: `${field.label} has no single readings to set aside` };
-    }
-    if (rejected !== null && !field.readings.rejectionReasons.includes(rejected)) {
-      return { pointer: '/rejected', detail: `must be one of ${field.readings.rejectionReasons.join(', ')}` };
-    }
-    return { address: `${address.pointer}/${address.reading}!rejected`, value: rejected, written: null };
-  }
-  if (operation.missing !== undefined) {
-    if (!field.missingReasons.includes(operation.missing)) {
-      return { pointer: '/missing', detail: `must be one of ${field.missingReasons.join(', ')}` };
-    }
-    return { address: operation.pointer, value: { missing: operation.missing }, written: null };
-  }
-  const value = operation.value ?? null;
-  if (value === '') {
-    return {
-      pointer: '/value',
-      detail: 'is empty: send null to take a value away, or say why it is missing',
-    };
-  }
-  if (value === null) return { address: operation.pointer, value: null, written: null };
-  const unlikeWritten = writtenProblem(value, operation.written);
+  const { pointer, value = null, missing, rejected, written } = operation;
+  const address = rejected === undefined ? pointer : `${pointer}!rejected`;
+  const next: EntryValue | null =
+    missing === undefined ? (rejected === undefined ? value : rejected) : { missing };
+  const where = missing !== undefined ? '/missing' : rejected !== undefined ? '/rejected' : '/value';
+  const problem = operationProblem(compiled, address, next);
+  if (problem !== undefined) return { pointer: where, detail: problem };
+  if (next === null || missing !== undefined || rejected !== undefined)
+    return { address, value: next, written: null };
+  const unlikeWritten = writtenProblem(next, written);
   if (unlikeWritten !== undefined) return { pointer: '/written', detail: unlikeWritten };
-  const [first] = judge(operation.pointer, value);
-  if (first !== undefined) return { pointer: '/value', detail: `${field.label} ${first}` };
-  return { address: operation.pointer, value, written: operation.written ?? null };
+  const [first] = judge(address, next);
+  if (first !== undefined) return { pointer: where, detail: first };
+  return { address, value: next, written: written ?? null };
 }
 
 /** The digits as written must be the value: the record would otherwise hold two numbers. */
@@ -146,7 +114,8 @@ export function planSave(
     const values = withDerived(entered, derived);
     const findings = checkValues(compiled, values, { stage: 'open' });
     const judged = judge(compiled, stored, findings, request.confirmations);
-    if (judged.refused.length === 0) return { stored, refused, confirmed: judged.confirmed, derived, values };
+    if (judged.refused.length === 0)
+      return { stored, refused, confirmed: judged.confirmed, derived, entered };
     refused.push(...judged.refused);
     const gone = new Set(judged.refused.map(({ change }) => change.address));
     stored = stored.filter(({ address }) => !gone.has(address));

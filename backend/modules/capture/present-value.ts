@@ -2,7 +2,7 @@ import type { HiddenValue, ValueDto } from '#schemas/api/capture.ts';
 import { parseAddress } from '#schemas/instruments/address.ts';
 import type { CompiledInstrument } from '#schemas/instruments/compiled-instrument.ts';
 import { isMissing } from '#schemas/instruments/entry-values.ts';
-import { cautionMessage } from '../instruments/index.ts';
+import { cautionCodes } from '#analysis/cautions/cautions.ts';
 import { currentActor } from '#backend/http/actor.ts';
 import type { StoredValue } from './entry-values.ts';
 
@@ -27,7 +27,11 @@ export function presentValue(compiled: CompiledInstrument, stored: StoredValue):
       ? {}
       : {
           rule: `${derivation.rule} ${derivation.version}`,
-          cautions: derivation.cautions.map((code) => ({ code, message: cautionMessage(code) })),
+          cautions: derivation.cautions.map((code) => ({ code, message: messageOf(code) })),
         }),
   };
 }
+
+/** The sentence behind a caution's code; one of an instrument's own rules says itself. */
+const messageOf = (code: string): string =>
+  code in cautionCodes ? cautionCodes[code as keyof typeof cautionCodes][1] : code.replaceAll('-', ' ');

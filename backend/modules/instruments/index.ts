@@ -1,0 +1,2 @@
+export { evaluateEntry } from './checking/evaluate-entry.ts';
+export { publishedInstrument, type PublishedInstrument } from './published-instrument.ts';
