@@ -7,7 +7,7 @@ import { coefficientWeights } from '../mixed-model/design-coefficients.ts';
 import { meanWeights, sequentialRows, typeThreeRows } from '../mixed-model/design-hypotheses.ts';
 import type { MixedModelFit } from '../mixed-model/fit.ts';
 import type { Factor, FixedDesign } from '../mixed-model/fixed-design.ts';
-import type { FixedPartInference } from '../mixed-model/inference.ts';
+import type { FixedPartInference } from '../mixed-model/fixed-part-inference.ts';
 
 /** A fitted plan; `shift` was subtracted from the outcome. */
 export interface FittedPlan {

@@ -1,8 +1,11 @@
 import type { Method } from '../core/method.ts';
 import type { MethodName } from '../core/plan.ts';
+import { allometricScaling } from './allometric-scaling.ts';
+import { ancovaChange } from './ancova-change.ts';
 import { blandAltman } from './bland-altman.ts';
 import { bootstrapCi } from './bootstrap-ci.ts';
 import { correlationWithinSubject } from './correlation-within-subject.ts';
+import { crossover2x2 } from './crossover-2x2.ts';
 import { doseResponse } from './dose-response.ts';
 import { equivalencePaired } from './equivalence-paired.ts';
 import { friedman } from './friedman.ts';
@@ -31,8 +34,10 @@ const list: readonly Method[] = [
   oneWayRmAnova,
   twoWayRmAnova,
   mixedAnova,
-  linearMixedModel,
   friedman,
+  crossover2x2,
+  linearMixedModel,
+  ancovaChange,
   blandAltman,
   icc,
   repeatability,
@@ -44,6 +49,7 @@ const list: readonly Method[] = [
   shapiroWilk,
   powerPairedT,
   powerCrossover,
+  allometricScaling,
   geometricMeanRatio,
   correlationWithinSubject,
   doseResponse,

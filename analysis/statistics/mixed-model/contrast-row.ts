@@ -1,5 +1,5 @@
 import { tTest } from '../core/t-test.ts';
-import type { Contrast } from './inference.ts';
+import type { Contrast } from './fixed-part-inference.ts';
 
 /** A contrast as a row of a table; without positive degrees of freedom there is no test and no interval. */
 export type ContrastRow = {

@@ -8,7 +8,7 @@ import {
   traceOfProduct,
 } from '../../numerics/linear-algebra.ts';
 import type { MixedModelFit } from './fit.ts';
-import type { FixedPartInference } from './inference.ts';
+import type { FixedPartInference } from './fixed-part-inference.ts';
 import { varianceComponents, type VarianceComponents } from './variance-components.ts';
 
 /**

@@ -1,7 +1,7 @@
 import { symmetricEigen } from '../../numerics/linear-algebra-eigen.ts';
 import { bilinearForm, innerProduct, times } from '../../numerics/linear-algebra.ts';
 import type { MixedModelFit } from './fit.ts';
-import type { FixedPartInference, FTest } from './inference.ts';
+import type { FixedPartInference, FTest } from './fixed-part-inference.ts';
 import { byFreeElements } from './profiled-deviance.ts';
 
 /** Directions in which the normalised information is below this carry no information. */
