@@ -42,6 +42,11 @@ const checks: Record<
       );
     }
   },
+  flag(argument, value) {
+    if (value !== 0 && value !== 1) {
+      throw new DomainError(argument, '0 or 1', value, 'Give 1 for yes and 0 for no, with the unit 1.');
+    }
+  },
   haemoglobin(argument, value, scale, unit) {
     if (!(value * scale >= 2 && value * scale <= 25)) {
       throw new DomainError(

@@ -24,7 +24,7 @@ export interface CaseError {
 /** Derives each `{ id, quantity, inputs }`, order kept; a bad case is answered with its error and stops no other. */
 export function deriveCases(cases: readonly unknown[]): CaseAnswer[] {
   return cases.map((each) => {
-    const { id = null, quantity, inputs } = (isRecord(each) ? each : {});
+    const { id = null, quantity, inputs } = isRecord(each) ? each : {};
     if (typeof quantity !== 'string' || !isRecord(inputs)) {
       const message = 'The case is no object with id, quantity and inputs.';
       return {

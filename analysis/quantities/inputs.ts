@@ -20,7 +20,7 @@ export interface Input<Unit extends string = string, Many extends Arity = Arity>
   readonly rule: UnitRule;
   readonly default?: number;
   /** A value and its declared unit that cannot both be right are stopped, never converted. */
-  readonly check?: 'haematocrit' | 'haemoglobin' | 'saturation';
+  readonly check?: 'haematocrit' | 'haemoglobin' | 'saturation' | 'flag';
   /** What to do when it is missing. */
   readonly whenMissing?: string;
 }
@@ -82,7 +82,7 @@ export function sameUnit<Many extends Arity>(
 
 /** A yes or no: 1 or 0. */
 export function flag(name: string, about: string): Input<'1', 'one'> {
-  return defaulted(single('1', name, about, '0 or 1'), 0);
+  return defaulted(single('1', name, about, '0 or 1', { check: 'flag' }), 0);
 }
 
 export type Inputs = Readonly<Record<string, Input>>;

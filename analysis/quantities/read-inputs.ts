@@ -153,7 +153,7 @@ function valueAndUnit(
       'invalid_input',
       `${label}[${wrong + 1}] is not a number.`,
       'Leave a missing reading out.',
-      label,
+      `${label}[${wrong + 1}]`,
     );
   }
   return { value: value as number[], unit };

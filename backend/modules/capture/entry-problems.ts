@@ -1,9 +1,8 @@
-import { instrumentLibrary } from '#analysis/quantities/instrument-library.ts';
+import { evaluateEntry, instrumentLibrary, type PublishedInstrument } from '../instruments/index.ts';
 import type { Finding } from '#schemas/instruments/check-values.ts';
 import type { EntryValues } from '#schemas/instruments/entry-values.ts';
 import { currentActor } from '#backend/http/actor.ts';
 import { Problem } from '#backend/http/problem.ts';
-import { evaluateEntry, type PublishedInstrument } from '../instruments/index.ts';
 import { messageFor } from './finding-message.ts';
 import type { Judged } from './plan-save.ts';
 

@@ -1,5 +1,5 @@
 import type { EntityManager } from '@mikro-orm/postgresql';
-import { instrumentLibrary } from '#analysis/quantities/instrument-library.ts';
+import { instrumentLibrary } from '../instruments/index.ts';
 import type { CorrectEntryBody, SaveEntryBody } from '#schemas/api/capture.ts';
 import { act } from '#backend/database/act.ts';
 import { authorize } from '#backend/http/authorize.ts';

@@ -1,5 +1,5 @@
 import type { EntityManager } from '@mikro-orm/postgresql';
-import { instrumentLibrary } from '#analysis/quantities/instrument-library.ts';
+import { instrumentLibrary } from './checking/instrument-library.ts';
 import { compilePublished } from '#schemas/instruments/compile-instrument.ts';
 import type { CompiledInstrument } from '#schemas/instruments/compiled-instrument.ts';
 import { instanceValidator, type InstanceValidator } from './checking/instance-validator.ts';
