@@ -96,6 +96,17 @@ const taken = (pointer: string, detail: string): Problem =>
   new Problem(409, 'already-exists', `This ${detail}.`, [{ pointer, detail }]);
 
 function assertTimeZone(timeZone: string): void {
-  if (Intl.supportedValuesOf('timeZone').includes(timeZone) || timeZone === 'UTC') return;
+  if (isTimeZone(timeZone)) return;
   throw invalidBody([{ pointer: '/timeZone', detail: 'is not an IANA time zone, such as America/La_Paz' }]);
+}
+
+/** A name of the zone data; a bare offset such as `-04:00` knows no summer time and is none. */
+function isTimeZone(name: string): boolean {
+  if (!/^[A-Za-z]/.test(name)) return false;
+  try {
+    new Intl.DateTimeFormat('en', { timeZone: name });
+    return true;
+  } catch {
+    return false;
+  }
 }
