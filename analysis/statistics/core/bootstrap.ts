@@ -1,7 +1,16 @@
 import { normalCdf, normalQuantile } from '../../numerics/normal.ts';
 import { valueAtRank } from './order-statistics.ts';
 
-/** Percentile and BCa limits; null where the resampled values give none. */
+/** Distribution of a statistic over resamples of the subjects. */
+export interface ResampledStatistic {
+  /** Share of resamples below the estimate; ties of rounding do not count. */
+  shareBelow: number;
+  quantile(p: number): number;
+  /** The statistic without each subject in turn. */
+  leaveOneOut: Float64Array;
+}
+
+/** Percentile and BCa limits; null where the estimate lies outside all resampled values. */
 export interface BootstrapLimits {
   percentile_ci_lower: number;
   percentile_ci_upper: number;
@@ -12,36 +21,33 @@ export interface BootstrapLimits {
 }
 
 /**
- * Bootstrap intervals from the resampled values of a statistic.
+ * Bootstrap intervals of a statistic.
  *
- * Shape    `resampled` is sorted in place; `below` the number of them below the estimate, ties of rounding not counted;
- *          `leaveOneOut` the statistic without each subject in turn
- * Formula  z₀ = Φ⁻¹(share below), a = Σl³/(6(Σl²)^1.5), levels Φ(z₀ + (z₀ + z)/(1 − a(z₀ + z))), quantiles at rank (R + 1)p
- * Source   Efron 1987, JASA 82:171-185; Efron & Tibshirani 1993, chapter 14
+ * Formula  z₀ = Φ⁻¹(share below), a = Σl³/(6(Σl²)^1.5), levels Φ(z₀ + (z₀ + z)/(1 − a(z₀ + z)))
+ * Source   Efron 1987, JASA 82:171-185; Efron & Tibshirani 1993, An Introduction to the Bootstrap, chapter 14
  */
-export function bootstrapLimits(
-  resampled: Float64Array,
-  below: number,
-  leaveOneOut: Float64Array,
-  confidence: number,
-): BootstrapLimits {
-  resampled.sort();
+export function bootstrapLimits(statistic: ResampledStatistic, confidence: number): BootstrapLimits {
   const tail = (1 - confidence) / 2;
-  const z0 = normalQuantile(below / resampled.length);
-  const acceleration = accelerationOf(leaveOneOut);
-  const at = (p: number) => valueAtRank(resampled, (resampled.length + 1) * p);
+  const z0 = normalQuantile(statistic.shareBelow);
+  const acceleration = accelerationOf(statistic.leaveOneOut);
   const corrected = (z: number) => {
+    if (!Number.isFinite(z0)) return null;
     const sum = z0 + z;
-    return Number.isFinite(z0) ? at(normalCdf(z0 + sum / (1 - acceleration * sum))) : null;
+    return statistic.quantile(normalCdf(z0 + sum / (1 - acceleration * sum)));
   };
   return {
-    percentile_ci_lower: at(tail),
-    percentile_ci_upper: at(1 - tail),
+    percentile_ci_lower: statistic.quantile(tail),
+    percentile_ci_upper: statistic.quantile(1 - tail),
     bca_ci_lower: corrected(normalQuantile(tail)),
     bca_ci_upper: corrected(-normalQuantile(tail)),
     bca_z0: Number.isFinite(z0) ? z0 : null,
     bca_acceleration: acceleration,
   };
+}
+
+/** Quantiles of sorted resampled values at rank (R + 1)p. */
+export function quantileOfResamples(sorted: Float64Array): (p: number) => number {
+  return (p) => valueAtRank(sorted, (sorted.length + 1) * p);
 }
 
 function accelerationOf(leaveOneOut: Float64Array): number {

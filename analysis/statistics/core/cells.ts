@@ -1,3 +1,4 @@
+import { naturalLogarithm } from '../../numerics/natural-logarithm.ts';
 import { AnalysisError } from './analysis-error.ts';
 import type { Plan } from './plan.ts';
 import { required } from './plan.ts';
@@ -25,7 +26,12 @@ export interface CompleteCells {
 export function outcomeValues(plan: Plan, table: Table): Float64Array {
   const { outcome } = required(plan, 'outcome');
   const values = table.numbers(outcome);
-  return plan.transform === 'log' ? table.positive(outcome, values).map(Math.log) : values;
+  return plan.transform === 'log' ? logarithmsOf(table.positive(outcome, values)) : values;
+}
+
+/** Natural logarithms of checked values; NaN (missing) stays NaN. */
+export function logarithmsOf(values: Float64Array): Float64Array {
+  return values.map((value) => (Number.isNaN(value) ? NaN : naturalLogarithm(value)));
 }
 
 /**

@@ -1,53 +1,47 @@
 import { seededRandom } from '../../numerics/random.ts';
-import { bootstrapLimits } from '../core/bootstrap.ts';
+import { bootstrapLimits, quantileOfResamples, type ResampledStatistic } from '../core/bootstrap.ts';
+import { resampledMedianDistribution } from '../core/median-distribution.ts';
 import type { Method } from '../core/method.ts';
 import { centred, mean, median, standardDeviation } from '../core/moments.ts';
 import { varyingPairsOf } from '../core/paired-difference.ts';
+import type { Plan } from '../core/plan.ts';
 
-/** Values of a statistic in resamples of the subjects, as deviations from the estimate. */
-interface Resampled {
+/** A statistic over resamples. */
+interface Resampled extends ResampledStatistic {
   estimate: number;
-  deviations: Float64Array;
-  below: number;
-  leaveOneOut: Float64Array;
+  bias: number;
+  standardError: number | null;
 }
 
-/** Percentile and BCa bootstrap intervals of the mean or median paired difference. */
+/**
+ * Percentile and BCa bootstrap intervals of the mean or the median paired difference.
+ *
+ * The mean is resampled as often as the plan says. The median has few possible values, whose probabilities over all
+ * resamples are known: they are used, so that its interval does not depend on `resamples` and `seed`.
+ */
 export const bootstrapCi: Method = {
   name: 'bootstrap_ci',
   run(plan, table) {
     const { n, difference, rounded, dropped } = varyingPairsOf(plan, table);
-    const { resamples, seed } = plan;
-    const { estimate, deviations, below, leaveOneOut } =
-      plan.statistic === 'mean'
-        ? resampleMean(difference, resamples, seed)
-        : resampleMedian(rounded, resamples, seed);
-    const bias = mean(deviations);
-    const standard_error = resamples > 1 ? standardDeviation(deviations) : null;
-    const limits = bootstrapLimits(deviations, below, leaveOneOut, plan.confidence);
-    const shifted = (limit: number | null) => (limit === null ? null : estimate + limit);
+    const isMean = plan.statistic === 'mean';
+    const resampled = isMean ? resampleMean(difference, plan) : allResamplesOfMedian(rounded);
+    const { bca_z0, bca_acceleration, ...limits } = bootstrapLimits(resampled, plan.confidence);
     return {
       n,
       dropped,
       estimates: {
-        estimate,
-        bias,
-        standard_error,
-        percentile_ci_lower: shifted(limits.percentile_ci_lower),
-        percentile_ci_upper: shifted(limits.percentile_ci_upper),
-        bca_ci_lower: shifted(limits.bca_ci_lower),
-        bca_ci_upper: shifted(limits.bca_ci_upper),
-        ...(plan.statistic === 'mean' && {
-          bca_z0: limits.bca_z0,
-          bca_acceleration: limits.bca_acceleration,
-        }),
+        estimate: resampled.estimate,
+        bias: resampled.bias,
+        standard_error: resampled.standardError,
+        ...limits,
+        ...(isMean && { bca_z0, bca_acceleration }),
       },
     };
   },
 };
 
 /** A resample that is the sample again differs from it by rounding only and is not below it. */
-function resampleMean(d: Float64Array, resamples: number, seed: number): Resampled {
+function resampleMean(d: Float64Array, { resamples, seed }: Plan): Resampled {
   const random = seededRandom(seed);
   const n = d.length;
   const deviation = centred(d);
@@ -60,30 +54,35 @@ function resampleMean(d: Float64Array, resamples: number, seed: number): Resampl
     if (sum < -rounding) below += 1;
     deviations[r] = sum / n;
   }
-  return { estimate: mean(d), deviations, below, leaveOneOut: deviation.map((value) => -value / (n - 1)) };
+  const estimate = mean(d);
+  const quantile = quantileOfResamples(deviations.sort());
+  return {
+    estimate,
+    bias: mean(deviations),
+    standardError: resamples > 1 ? standardDeviation(deviations) : null,
+    shareBelow: below / resamples,
+    quantile: (p) => estimate + quantile(p),
+    leaveOneOut: deviation.map((value) => -value / (n - 1)),
+  };
 }
 
-/** The median of a resample is found by counting how often each of the sorted values was drawn. */
-function resampleMedian(d: Float64Array, resamples: number, seed: number): Resampled {
-  const random = seededRandom(seed);
-  const n = d.length;
-  const sorted = d.toSorted();
+function allResamplesOfMedian(d: Float64Array): Resampled {
   const estimate = median(d);
-  const counts = new Uint32Array(n);
-  const deviations = new Float64Array(resamples);
-  const middle = { low: (n + 1) >> 1, high: (n + 2) >> 1 };
-  let below = 0;
-  for (let r = 0; r < resamples; r += 1) {
-    counts.fill(0);
-    for (let i = 0; i < n; i += 1) counts[random.below(n)]! += 1;
-    let at = 0;
-    let drawn = counts[0]!;
-    while (drawn < middle.low) drawn += counts[(at += 1)]!;
-    const low = sorted[at]!;
-    while (drawn < middle.high) drawn += counts[(at += 1)]!;
-    const value = (low + sorted[at]!) / 2;
-    if (value < estimate) below += 1;
-    deviations[r] = value - estimate;
-  }
-  return { estimate, deviations, below, leaveOneOut: d.map((_, i) => median(d.filter((_, j) => j !== i))) };
+  const { values, probabilities } = resampledMedianDistribution(d);
+  const deviations = values.map((value) => value - estimate);
+  const expected = (f: (deviation: number) => number) =>
+    deviations.reduce((sum, deviation, i) => sum + probabilities[i]! * f(deviation), 0);
+  const bias = expected((deviation) => deviation);
+  return {
+    estimate,
+    bias,
+    standardError: Math.sqrt(expected((deviation) => (deviation - bias) ** 2)),
+    shareBelow: expected((deviation) => (deviation < 0 ? 1 : 0)),
+    quantile: (p) => {
+      let reached = 0;
+      const index = probabilities.findIndex((probability) => (reached += probability) >= p);
+      return values[index < 0 ? values.length - 1 : index]!;
+    },
+    leaveOneOut: d.map((_, i) => median(d.filter((_value, j) => j !== i))),
+  };
 }

@@ -1,7 +1,7 @@
 import { seededRandom } from '../../numerics/random.ts';
 import { studentTQuantile } from '../../numerics/student-t.ts';
 import { AnalysisError } from '../core/analysis-error.ts';
-import { bootstrapLimits, type BootstrapLimits } from '../core/bootstrap.ts';
+import { bootstrapLimits, quantileOfResamples, type BootstrapLimits } from '../core/bootstrap.ts';
 import { requireSubjects } from '../core/cells.ts';
 import { isConstantOnGrid, roundingGrid } from '../core/grid.ts';
 import type { Method } from '../core/method.ts';
@@ -105,5 +105,8 @@ function resampledLimits(a: Float64Array, b: Float64Array, plan: Plan): Bootstra
     if (shares[r]! < share - rounding) below += 1;
   }
   const leaveOneOut = a.map((value, i) => (n * mean(a) - value) / (n * mean(b) - b[i]!));
-  return bootstrapLimits(shares, below, leaveOneOut, plan.confidence);
+  return bootstrapLimits(
+    { shareBelow: below / shares.length, quantile: quantileOfResamples(shares.sort()), leaveOneOut },
+    plan.confidence,
+  );
 }
