@@ -92,7 +92,7 @@ export interface Caution {
 }
 
 /** The caution behind a code, with the sentence a person reads. */
-export function caution(code: CautionCode): Caution {
+function caution(code: CautionCode): Caution {
   const [severity, message] = cautionCodes[code];
   return { code, severity, message };
 }

@@ -11,7 +11,7 @@ export interface LawParameter {
 
 export type LawOptions = { readonly [Name in LawParameter['name']]?: number };
 
-export interface LawViscosity {
+interface LawViscosity {
   readonly viscosity: Quantity<'mPa.s'>;
   readonly cautions: readonly Caution[];
 }

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import type { CautionCode } from '../cautions/cautions.ts';
-import type { GivenInput } from './define.ts';
+import type { GivenInput } from './inputs.ts';
 import { derive } from './registry.ts';
 
 const q = (value: number | number[], unit: string): GivenInput => ({ value, unit });

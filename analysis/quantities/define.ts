@@ -1,16 +1,11 @@
 import { cautions } from '../cautions/cautions.ts';
 import type { Caution, CautionCode } from '../cautions/cautions.ts';
-import type { Inputs, Units, Values } from './inputs.ts';
+import type { GivenInput, Inputs, Units, Values } from './inputs.ts';
 import { readInputs } from './read-inputs.ts';
 import { convert } from '../units/convert.ts';
 import { DomainError } from '../units/errors.ts';
 import type { Quantity } from '../units/quantity.ts';
 import { requireFinite } from '../units/require.ts';
-
-export interface GivenInput {
-  readonly value: number | readonly number[];
-  readonly unit: string;
-}
 
 export interface DerivedValue {
   readonly value: number;

@@ -1,5 +1,5 @@
 import type { Caution } from '../cautions/cautions.ts';
-import type { GivenInput } from './define.ts';
+import type { GivenInput } from './inputs.ts';
 import { InputError } from './input-error.ts';
 import { derive } from './registry.ts';
 import { DomainError, UnitError } from '../units/errors.ts';
@@ -14,7 +14,7 @@ export type CaseAnswer =
     }
   | { readonly id: unknown; readonly error: CaseError };
 
-export interface CaseError {
+interface CaseError {
   readonly code: string;
   readonly message: string;
   readonly argument?: string;

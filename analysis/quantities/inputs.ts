@@ -1,5 +1,11 @@
 import type { Quantity } from '../units/quantity.ts';
 
+/** A value as it comes in, with the UCUM code of its unit. */
+export interface GivenInput {
+  readonly value: number | readonly number[];
+  readonly unit: string;
+}
+
 /** How an input's unit is read: converted to a fixed one, kept as given, or made the same as another input's. */
 export type UnitRule =
   | { readonly kind: 'convert' }

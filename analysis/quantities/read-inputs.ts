@@ -1,5 +1,5 @@
 import { checkDeclaredUnit } from './declared-unit.ts';
-import type { GivenInput } from './define.ts';
+import type { GivenInput } from './inputs.ts';
 import { InputError } from './input-error.ts';
 import type { Input, Inputs } from './inputs.ts';
 import { convert, sameDimension } from '../units/convert.ts';

@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import published from '../reference/haemodynamics/published.json' with { type: 'json' };
 import viscosityTable from '../reference/haemodynamics/viscosity-table.json' with { type: 'json' };
 import { convert } from '../units/convert.ts';
-import type { GivenInput } from './define.ts';
+import type { GivenInput } from './inputs.ts';
 import { derive, quantities } from './registry.ts';
 
 interface SharedCase {

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { splitFromMeasurements } from '../haemodynamics/split/split-from-measurements.ts';
 import { measurementOfKnownSpread } from '../haemodynamics/split/measurement.ts';
 import { viscosityLawNamed } from '../haemorheology/viscosity-laws.ts';
-import type { GivenInput } from './define.ts';
+import type { GivenInput } from './inputs.ts';
 import { derive } from './registry.ts';
 
 const mmHg = (value: number) => ({ value, unit: 'mm[Hg]' });

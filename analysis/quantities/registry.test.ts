@@ -4,7 +4,7 @@ import { cautionCodes } from '../cautions/cautions.ts';
 import { parseUnit } from '../units/parse-unit.ts';
 import { DomainError, UnitError } from '../units/errors.ts';
 import published from '../reference/haemodynamics/published.json' with { type: 'json' };
-import type { GivenInput } from './define.ts';
+import type { GivenInput } from './inputs.ts';
 import { InputError } from './input-error.ts';
 import { listQuantities } from './list-quantities.ts';
 import { derive, quantities, quantityNamed } from './registry.ts';

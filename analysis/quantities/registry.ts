@@ -1,5 +1,6 @@
 import { bloodQuantities } from './blood.ts';
-import type { DerivedValue, GivenInput, QuantityDefinition } from './define.ts';
+import type { DerivedValue, QuantityDefinition } from './define.ts';
+import type { GivenInput } from './inputs.ts';
 import { dopplerQuantities } from './doppler.ts';
 import { flowQuantities } from './flow.ts';
 import { hyperaemiaQuantities } from './hyperaemia.ts';

@@ -28,7 +28,7 @@ export interface LawChoice {
   readonly options?: LawOptions;
 }
 
-export interface SplitEstimate {
+interface SplitEstimate {
   readonly estimate: number;
   readonly standardError: number;
   readonly df: number;
