@@ -3,12 +3,18 @@ import type { RouteTable } from './http/route.ts';
 import { declareAccountRoutes } from './modules/accounts/index.ts';
 import { declareAnalysisRoutes } from './modules/analysis/index.ts';
 import { declareCaptureRoutes } from './modules/capture/index.ts';
+import { declareParticipantsRoutes } from './modules/participants/index.ts';
+import { declareMonitoringRoutes } from './modules/monitoring/index.ts';
+import { declareSourceRoutes } from './modules/source/index.ts';
 import { declareStudiesRoutes } from './modules/studies/index.ts';
 
 /** Every module declares its routes here, in the order of their nouns. */
 export function declareRoutes(table: RouteTable, deps: Deps): void {
   declareAccountRoutes(table, deps);
   declareStudiesRoutes(table, deps);
+  declareParticipantsRoutes(table, deps);
   declareCaptureRoutes(table, deps);
+  declareSourceRoutes(table, deps);
+  declareMonitoringRoutes(table, deps);
   declareAnalysisRoutes(table, deps);
 }

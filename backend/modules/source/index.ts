@@ -1,0 +1,2 @@
+export { declareSourceRoutes } from './source.routes.ts';
+export { onSourceReplaced, uploadSource } from './source.service.ts';
