@@ -115,7 +115,7 @@ function quantityProblems(
       if (!source) problems.push({ pointer, message: `There is no field ${input}` });
       else if (source.type !== 'number' && source.type !== 'integer')
         problems.push({ pointer, message: `${input} is no number` });
-      else if (source.unit !== needed.unit)
+      else if (!takesUnit(needed, source.unit))
         problems.push({ pointer, message: wrongUnit(needed, source.unit) });
       else if (needed.array && !source.readings)
         problems.push({ pointer, message: `${needed.name} takes readings, ${input} is one value` });
