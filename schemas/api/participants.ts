@@ -287,8 +287,8 @@ export interface SealedListDto {
 }
 
 export interface AllocationDto {
-  /** False in a design with one sequence: there is nothing to allocate. */
-  needed: boolean;
+  /** Sequences of the protocol: none before it is published; with one there is nothing to allocate. */
+  sequences: number;
   sealed: SealedListDto | null;
   assigned: number;
   sites: { siteCode: string; siteName: string; enrolled: number; assigned: number }[];
@@ -302,9 +302,9 @@ const sealedListDto = {
 
 export const allocationDto = {
   ...object,
-  required: ['needed', 'sealed', 'assigned', 'sites'],
+  required: ['sequences', 'sealed', 'assigned', 'sites'],
   properties: {
-    needed: { type: 'boolean' },
+    sequences: { type: 'integer' },
     sealed: { anyOf: [{ type: 'null' }, sealedListDto] },
     assigned: { type: 'integer' },
     sites: {

@@ -4,6 +4,7 @@ export interface MailParams {
   'password-reset': { path: string; validMinutes: number };
   'account-changed': { change: AccountChange };
   'work-waiting': { waiting: WaitingWork; study: string; path: string };
+  'study-event': { event: StudyEvent; study: string; path: string };
   'chain-heads': { study: string; heads: { sequence: number; hash: string; at: string }[] };
 }
 
@@ -13,6 +14,9 @@ export type MailTemplate = keyof MailParams;
 export type AccountChange = keyof typeof accountChanges;
 /** What a person is asked to come and do. */
 export type WaitingWork = keyof typeof waitingWork;
+
+/** What others are told of: that it happened, never to whom, never what was seen. */
+export type StudyEvent = keyof typeof studyEvents;
 
 export interface MailText {
   subject: string;
@@ -38,6 +42,12 @@ const waitingWork = {
   run: 'A run that you asked for has ended',
 };
 
+const studyEvents = {
+  'identifiers-opened': 'Direct identifiers were opened urgently',
+  'allocation-opened': 'An allocation was opened in an emergency',
+  unblinded: 'The allocation was unblinded by two people',
+};
+
 const writers: { [T in MailTemplate]: (params: MailParams[T], link: Link) => MailText } = {
   invitation: ({ path, validHours }, link) => ({
     subject: 'Your invitation to Vesselry',
@@ -54,6 +64,10 @@ const writers: { [T in MailTemplate]: (params: MailParams[T], link: Link) => Mai
   'work-waiting': ({ waiting, study, path }, link) => ({
     subject: `${waitingWork[waiting]} in Vesselry`,
     text: `${waitingWork[waiting]} in the study ${oneLine(study)}.\n\n${link(path)}`,
+  }),
+  'study-event': ({ event, study, path }, link) => ({
+    subject: `${studyEvents[event]} in Vesselry`,
+    text: `${studyEvents[event]} in the study ${oneLine(study)}.\n\nWho did it, when and why stands in the trail of the study. What was seen is not in this mail.\n\n${link(path)}`,
   }),
   'chain-heads': ({ study, heads }) => ({
     subject: 'Heads of the audit trail',

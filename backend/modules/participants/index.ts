@@ -1,1 +1,16 @@
+import type { Deps } from '#backend/http/deps.ts';
+import type { RouteTable } from '#backend/http/route.ts';
+import { declareAllocationRoutes, declareUnblindingRoutes } from './allocation.routes.ts';
+import { declareIdentifiersRoutes } from './identifiers.routes.ts';
+import { declareParticipantRoutes } from './participant.routes.ts';
+
+export { conditionOf } from './conditions.ts';
 export { assertConsented, recordConsent } from './consent.ts';
+
+/** Routes of participants, their identifiers, the allocation and its blinding. */
+export function declareParticipantsRoutes(table: RouteTable, deps: Deps): void {
+  declareParticipantRoutes(table, deps);
+  declareIdentifiersRoutes(table, deps);
+  declareAllocationRoutes(table, deps);
+  declareUnblindingRoutes(table, deps);
+}
