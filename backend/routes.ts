@@ -5,6 +5,7 @@ import { declareAnalysisRoutes } from './modules/analysis/index.ts';
 import { declareCaptureRoutes } from './modules/capture/index.ts';
 import { declareParticipantsRoutes } from './modules/participants/index.ts';
 import { declareMonitoringRoutes } from './modules/monitoring/index.ts';
+import { declareRecordRoutes } from './modules/records/index.ts';
 import { declareSourceRoutes } from './modules/source/index.ts';
 import { declareStudiesRoutes } from './modules/studies/index.ts';
 
@@ -16,5 +17,6 @@ export function declareRoutes(table: RouteTable, deps: Deps): void {
   declareCaptureRoutes(table, deps);
   declareSourceRoutes(table, deps);
   declareMonitoringRoutes(table, deps);
+  declareRecordRoutes(table, deps);
   declareAnalysisRoutes(table, deps);
 }

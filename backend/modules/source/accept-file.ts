@@ -31,8 +31,8 @@ export function acceptFile(source: AsyncIterable<Uint8Array>): IncomingFile {
   let type: SourceType | undefined;
   async function* body(): AsyncGenerator<Uint8Array> {
     const text = new TextDecoder('utf-8', { fatal: true });
-    let head = Buffer.alloc(0);
-    let tail = Buffer.alloc(0);
+    let head: Buffer = Buffer.alloc(0);
+    let tail: Buffer = Buffer.alloc(0);
     for await (const chunk of source) {
       if (type === undefined) {
         head = Buffer.concat([head, chunk]);
