@@ -1,5 +1,5 @@
 import { StartError } from './config/start-error.ts';
-import { logger } from './http/logger.ts';
+import { logger, stackOf } from './http/logger.ts';
 import { demoAccounts } from './modules/accounts/index.ts';
 import { start, type Started } from './start.ts';
 
@@ -12,7 +12,9 @@ for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'] as const) {
   process.on(signal, () => stopping.abort());
 }
 // One broken promise in a job or a library must not take everybody's requests down with it.
-process.on('unhandledRejection', (error) => logger.error({ err: error }, 'a promise was rejected unheard'));
+process.on('unhandledRejection', (error) =>
+  logger.error({ error: stackOf(error) }, 'a promise was rejected unheard'),
+);
 
 process.stdout.write('Vesselry is starting\n');
 try {

@@ -3,7 +3,7 @@ import { buildApplication, type Application } from './app.ts';
 import type { ObjectStoreSettings, Settings } from './config/settings.ts';
 import { connect } from './database/orm.ts';
 import type { Deps } from './http/deps.ts';
-import { logger } from './http/logger.ts';
+import { logger, stackOf } from './http/logger.ts';
 import type { QueueTiming } from './jobs/queue.ts';
 import { openMailer } from './services/mail.ts';
 import { openObjectStore } from './services/object-store.ts';
@@ -26,10 +26,11 @@ export interface Runtime {
 
 /** Opens everything that the application is built from, and builds it; `main` and the tests share this wiring. */
 export async function openRuntime(settings: Settings, services: Services): Promise<Runtime> {
+  logger.level = settings.logLevel;
   const { databaseUrl } = services;
   const orm = await connect(databaseUrl);
   const pool = new pg.Pool({ connectionString: databaseUrl, max: 10, application_name: 'vesselry web' });
-  pool.on('error', (error) => logger.error({ err: error }, 'an idle database connection broke'));
+  pool.on('error', (error) => logger.error({ error: stackOf(error) }, 'an idle database connection broke'));
   const objectStore = openObjectStore(services.objectStore);
   const mailer = openMailer({ smtpUrl: services.smtpUrl, from: settings.mail.from });
   const deps: Deps = { orm, pool, settings, objectStore };

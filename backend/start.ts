@@ -52,6 +52,10 @@ export async function start(options: { dev: boolean; say: Say; signal: AbortSign
       openRuntime(settings, { databaseUrl: database.url, objectStore, smtpUrl }),
     );
     onStop(runtime.close);
+    await runtime.deps.objectStore.check().catch((error: unknown) => {
+      const kind = error instanceof Error ? error.name : 'unknown';
+      say(`the bucket does not answer (${kind}): files cannot be stored or read until it does`);
+    });
     await step('worker', () => runtime.work());
     const api = runtime.application.express as RequestListener;
     web.serve(options.dev ? await step('client with reload', () => withReload(api, onStop)) : api);

@@ -27,10 +27,12 @@ const starting: RequestListener = (_request, response) => {
 export async function listen(host: string, port: number): Promise<WebServer> {
   let handler = starting;
   let closing = false;
-  const underWay = new Set<ServerResponse>();
+  const eventStreams = new Set<ServerResponse>();
   const server = createServer((request, response) => {
-    underWay.add(response);
-    response.once('close', () => underWay.delete(response));
+    if (request.headers.accept?.includes('text/event-stream')) {
+      eventStreams.add(response);
+      response.once('close', () => eventStreams.delete(response));
+    }
     // A kept-alive connection would otherwise outlive the close by its idle time.
     if (closing) response.setHeader('Connection', 'close');
     handler(request, response);
@@ -46,18 +48,15 @@ export async function listen(host: string, port: number): Promise<WebServer> {
     },
     close: () => {
       closing = true;
-      return closeSoon(server, underWay);
+      return closeSoon(server, eventStreams);
     },
   };
 }
 
-function closeSoon(server: Server, underWay: Set<ServerResponse>): Promise<void> {
+function closeSoon(server: Server, eventStreams: Set<ServerResponse>): Promise<void> {
   const idle = setInterval(() => server.closeIdleConnections(), 100);
   const last = setTimeout(() => server.closeAllConnections(), graceMilliseconds);
-  // A stream of events has no end of its own.
-  for (const response of underWay) {
-    if (String(response.getHeader('Content-Type')).startsWith('text/event-stream')) response.end();
-  }
+  for (const response of eventStreams) response.end(); // they have no end of their own
   return new Promise((resolve) => {
     server.close(() => {
       clearInterval(idle);

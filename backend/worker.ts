@@ -1,5 +1,5 @@
 import type { Deps } from './http/deps.ts';
-import { logger } from './http/logger.ts';
+import { logger, stackOf } from './http/logger.ts';
 import { failMail } from './jobs/mail/outbox.ts';
 import { sendQueuedMail } from './jobs/mail/send-queued-mail.ts';
 import { failProgress } from './jobs/progress.ts';
@@ -19,7 +19,7 @@ export async function startWorker(
   timing?: Partial<QueueTiming>,
 ): Promise<Queue> {
   const queue = await startQueue(appUrl, {
-    onError: (error, name) => logger.error({ err: error, queue: name }, 'a job failed'),
+    onError: (error, name) => logger.error({ error: stackOf(error), queue: name }, 'a job failed'),
     timing,
   });
   const fork = () => orm.em.fork();

@@ -9,7 +9,7 @@ export const withRequestId = <T>(requestId: string, work: () => T): T => request
 /** Who, what, when in UTC; never bodies, queries, cookies or values of participants. */
 export const logger = pino({
   base: undefined,
-  level: process.env['LOG_LEVEL'] ?? 'warn',
+  level: 'warn', // until the settings are read
   timestamp: pino.stdTimeFunctions.isoTime,
   redact: [
     'password',
@@ -23,3 +23,7 @@ export const logger = pino({
   ],
   mixin: () => ({ requestId: requestIds.getStore() }),
 });
+
+/** An error as the log keeps it: its other fields (a database's `detail`, say) may hold values of participants. */
+export const stackOf = (error: unknown): string =>
+  error instanceof Error ? (error.stack ?? error.name) : String(error);

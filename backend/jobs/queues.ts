@@ -29,11 +29,11 @@ export const deadLetter = 'dead' satisfies QueueName;
 
 export const queues: Readonly<Record<QueueName, QueueOptions>> = {
   [deadLetter]: { retryLimit: 5, retryDelay: 5, retryBackoff: true },
-  // Doubling from half a minute spans most of a day: a mail server that is down overnight loses nothing.
   tidy: { retryLimit: 2, retryDelay: 60, retryBackoff: false, cron: '17 3 * * *' },
   'cut.build': { retryLimit: 2, retryDelay: 2, retryBackoff: true },
   'run.execute': { retryLimit: 2, retryDelay: 2, retryBackoff: true },
   'export.build': { retryLimit: 2, retryDelay: 2, retryBackoff: true },
+  // Doubling from half a minute spans most of a day: a mail server that is down overnight loses nothing.
   'mail.send': { retryLimit: 10, retryDelay: 30, retryBackoff: true },
 };
 
