@@ -10,7 +10,11 @@ import { PersonSchema } from './modules/accounts/person.entity.ts';
 import { CheckOutcomeSchema, EntrySchema } from './modules/capture/entry.entity.ts';
 import { DeviationSchema, StepEventSchema, VisitSchema } from './modules/capture/visit.entity.ts';
 import { ExportRequestSchema } from './modules/exports/export-request.entity.ts';
-import { InstrumentDraftSchema, InstrumentVersionSchema } from './modules/instruments/instrument.entity.ts';
+import {
+  InstrumentDraftSchema,
+  InstrumentPreviewSchema,
+  InstrumentVersionSchema,
+} from './modules/instruments/instrument.entity.ts';
 import {
   QueryMessageSchema,
   QuerySchema,
@@ -41,6 +45,7 @@ export const entities = [
   ProtocolVersionSchema,
   InstrumentDraftSchema,
   InstrumentVersionSchema,
+  InstrumentPreviewSchema,
   ParticipantSchema,
   DirectIdentifiersSchema,
   AllocationListSchema,

@@ -6,6 +6,7 @@ import { audited } from '#backend/database/audited.ts';
 export const PersonSchema = defineEntity({
   name: 'Person',
   tableName: 'person',
+  indexes: [{ properties: ['name', 'id'] }],
   properties: {
     id: id(),
     /** Lower case; the sign-in name. */

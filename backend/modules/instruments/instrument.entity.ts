@@ -39,8 +39,9 @@ export const InstrumentVersionSchema = defineEntity({
     key: p.string().length(60),
     version: p.integer(),
     title: p.string().length(200),
-    schema: json<InstrumentSchema>(),
-    samples: json<SampleEntry[]>(),
+    /** `json`, not `jsonb`: the order of the fields is the order of the form. */
+    schema: json<InstrumentSchema>().columnType('json'),
+    samples: json<SampleEntry[]>().columnType('json'),
     /** SHA-256 of the RFC 8785 form of `schema`, hex; also the name under which the validator is served. */
     hash: p.string().length(64).index(),
     /** The standalone validator module, compiled on publication. */
@@ -55,4 +56,19 @@ audited(InstrumentVersionSchema, {
   subject: 'instrument-version',
   chain: 'study',
   columns: { schema: 'skip', samples: 'skip', validatorCode: 'skip', reason: 'skip' },
+});
+
+/**
+ * The validator of a schema that is only being drafted, kept for the preview by the schema's hash.
+ * A cache, not a record: made again when asked for, swept when old.
+ */
+export const InstrumentPreviewSchema = defineEntity({
+  name: 'InstrumentPreview',
+  tableName: 'instrument_preview',
+  properties: {
+    studyId: () => p.manyToOne(StudySchema).mapToPk().fieldName('study_id').primary(),
+    hash: p.string().length(64).primary(),
+    validatorCode: p.text(),
+    madeAt: p.datetime(),
+  },
 });

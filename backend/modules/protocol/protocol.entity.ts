@@ -12,7 +12,8 @@ export const ProtocolDraftSchema = defineEntity({
   properties: {
     id: id(),
     studyId: () => p.manyToOne(StudySchema).mapToPk().fieldName('study_id').unique(),
-    content: json<Protocol>(),
+    /** The protocol as its author wrote it, invalid text included, so that nothing typed is lost. */
+    text: p.text(),
     baseVersion: p.integer().nullable(),
     revision: revision(),
   },
@@ -21,7 +22,7 @@ export type ProtocolDraft = InferEntity<typeof ProtocolDraftSchema>;
 audited(ProtocolDraftSchema, {
   subject: 'protocol-draft',
   chain: 'study',
-  columns: { content: 'digest', revision: 'skip' },
+  columns: { text: 'digest', revision: 'skip' },
 });
 
 /** A published protocol: never changes (IV-01); *superseded* is derived from the next one. */
@@ -33,7 +34,7 @@ export const ProtocolVersionSchema = defineEntity({
     id: id(),
     studyId: () => p.manyToOne(StudySchema).mapToPk().fieldName('study_id'),
     version: p.integer(),
-    content: json<Protocol>(),
+    content: json<Protocol>().columnType('json'),
     /** SHA-256 of the RFC 8785 form, hex. */
     hash: p.string().length(64),
     reason: p.text(),
