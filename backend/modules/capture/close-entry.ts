@@ -90,10 +90,10 @@ async function recordConsentOf(
 ): Promise<void> {
   if (entry.instrumentKey !== 'consent') return;
   const values = entryValues(stored);
-  const date = values['/consentDate'];
+  const date = values['/consentedOn'];
   const version = values['/consentVersion'];
   if (typeof date !== 'string' || typeof version !== 'string') {
-    throw stateForbids('The consent instrument needs the fields consentDate and consentVersion.');
+    throw stateForbids('The consent instrument needs the fields consentedOn and consentVersion.');
   }
   await recordConsent(tx, entry.participantId, { date, version });
 }

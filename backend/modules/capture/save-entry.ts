@@ -10,7 +10,7 @@ import { aboutEntry } from './about-entry.ts';
 import { assertFresh } from './changed-since.ts';
 import { EntrySchema } from './entry.entity.ts';
 import { blocking, incompleteProblem, refusedProblem } from './entry-problems.ts';
-import { entryValues } from './entry-values.ts';
+import { enteredValues } from './entry-values.ts';
 import { tellCheckConfirmed, tellValuesChanged } from './hooks.ts';
 import { loadEntry, type LoadedEntry } from './load-entry.ts';
 import { planSave, readOperations, type SavePlan } from './plan-save.ts';
@@ -81,10 +81,16 @@ function decide(
   );
   if (problems.length > 0) throw invalidBody(problems);
   const confirmations = new Map((body.confirmations ?? []).map(({ checkId, reason }) => [checkId, reason]));
-  return planSave(instrument.compiled, instrumentLibrary, entryValues(stored), changes, {
-    confirmations,
-    stage,
-  });
+  return planSave(
+    instrument.compiled,
+    instrumentLibrary,
+    enteredValues(instrument.compiled, stored),
+    changes,
+    {
+      confirmations,
+      stage,
+    },
+  );
 }
 
 async function storePlan(
