@@ -70,6 +70,9 @@ export function fitMixedModel(model: MixedModel): MixedModelFit {
   let left: FreeFactor = { free: elements, origin: elements.includes(1) ? meanOfSlope : 0 };
   let slope = slopeAbout(model.slope, left.origin);
   let prepared = prepareRows({ ...model, slope }, model.negligible);
+  if (prepared.statistics.rows - prepared.statistics.columns <= elements.length) {
+    throw noConvergence('Fewer rows are left beside the fixed part than there are variances to estimate.');
+  }
   for (let atBoundary = false; ; atBoundary = true) {
     const { free } = left;
     const optimum = search(prepared, { reml: model.estimation !== 'ML', free });
@@ -94,11 +97,11 @@ function search(
     if (found !== null && !(optimum !== null && optimum.value <= found.value)) optimum = found;
   }
   if (optimum !== null) return optimum.detail;
-  throw new AnalysisError(
-    'no_convergence',
-    {},
-    'The mixed model has no best set of variances. Simplify its random part.',
-  );
+  throw noConvergence('The mixed model has no best set of variances.');
+}
+
+function noConvergence(reason: string): AnalysisError {
+  return new AnalysisError('no_convergence', {}, `${reason} Simplify the model.`);
 }
 
 function describe(

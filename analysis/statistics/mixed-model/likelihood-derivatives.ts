@@ -24,7 +24,7 @@ export function emptyExpansion(): Expansion {
 }
 
 /** Adds `factor` times the values, one for each of `PAIRS`, to a symmetric 3 × 3 matrix. */
-export function addSymmetric(hessian: Float64Array, factor: number, values: readonly number[]): void {
+export function addSymmetric(hessian: Float64Array, factor: number, values: ArrayLike<number>): void {
   PAIRS.forEach(([i, j], index) => {
     hessian[3 * i + j]! += factor * values[index]!;
     if (i !== j) hessian[3 * j + i]! += factor * values[index]!;

@@ -53,6 +53,8 @@ export function likelihoodParts(
 ): LikelihoodParts | null {
   const p = statistics.columns;
   const logDeterminants = emptyExpansion();
+  const slopes = logDeterminants.gradient;
+  const curvatures = new Float64Array(PAIRS.length);
   const k = emptyPatternCovariance();
   const sums = weightedMoments(statistics, 4 + PAIRS.length, (pattern, weights) => {
     patternCovariance(statistics, pattern, factor, k);
@@ -60,20 +62,18 @@ export function likelihoodParts(
     const count = statistics.counts[pattern]!;
     logDeterminants.value += count * k.logDeterminant;
     const { g11, g12, g22 } = k;
-    const gradient = logDeterminants.gradient;
-    gradient[0]! += count * g11;
-    gradient[1]! += count * 2 * g12;
-    gradient[2]! += count * g22;
-    addSymmetric(logDeterminants.hessian, -count, [
-      g11 * g11,
-      2 * g11 * g12,
-      g12 * g12,
-      2 * (g11 * g22 + g12 * g12),
-      2 * g12 * g22,
-      g22 * g22,
-    ]);
+    slopes[0]! += count * g11;
+    slopes[1]! += count * 2 * g12;
+    slopes[2]! += count * g22;
+    curvatures[0]! -= count * g11 * g11;
+    curvatures[1]! -= count * 2 * g11 * g12;
+    curvatures[2]! -= count * g12 * g12;
+    curvatures[3]! -= count * 2 * (g11 * g22 + g12 * g12);
+    curvatures[4]! -= count * 2 * g12 * g22;
+    curvatures[5]! -= count * g22 * g22;
     writeDerivativeWeights(weights, k);
   });
+  addSymmetric(logDeterminants.hessian, 1, curvatures);
   const packed = statistics.packed;
   for (let e = 0; e < packed; e += 1) sums[e]! += statistics.within[e]!;
   const slot = (index: number) => sums.subarray(index * packed, (index + 1) * packed);

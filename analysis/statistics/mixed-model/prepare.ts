@@ -23,8 +23,8 @@ const NEARLY_ALL = 1e-4;
  * Where the fixed part explains nearly all of the outcome, over all rows or within subjects, its fit is subtracted
  * from the rows first: the residuals would otherwise be small differences of large sums.
  *
- * Errors  invalid_plan for a rank-deficient fixed part; too_few_replicates when nothing is left within subjects
- *         to tell the residual variance by; zero_variance when what is left is at most `negligible` in size
+ * Errors  invalid_plan for a rank-deficient fixed part; too_few_replicates when no subject has more rows than random
+ *         effects; zero_variance when what is left within subjects is at most `negligible` in size
  */
 export function prepareRows(rows: MixedModelRows, negligible: number): PreparedRows {
   const subtracted = new Float64Array(rows.columns.length);
@@ -35,11 +35,11 @@ export function prepareRows(rows: MixedModelRows, negligible: number): PreparedR
       'The fixed part is rank-deficient: a column follows from others, or a combination of levels has no row. Leave out a term.',
     );
   }
-  if (statistics.rows <= statistics.spanned + within.rank) {
+  if (statistics.rows <= statistics.spanned) {
     throw new AnalysisError(
       'too_few_replicates',
       {},
-      'No row is left within subjects to tell the residual variance from that of the random effects. Take out the random slope or a fixed term.',
+      'No subject has more rows than random effects, so the residual variance cannot be told from theirs. Take out the random slope, or compare subjects with another method.',
     );
   }
   for (const which of ['overall', 'within'] as const) {
@@ -48,7 +48,9 @@ export function prepareRows(rows: MixedModelRows, negligible: number): PreparedR
     fit.coefficients.forEach((value, c) => (subtracted[c]! += value));
     ({ statistics, overall, within } = plainFits({ ...rows, outcome: residuals(rows, subtracted) }));
   }
-  if (within.sumOfSquares <= negligible ** 2 * statistics.rows) throw new AnalysisError('zero_variance');
+  const hasResidual = statistics.rows > statistics.spanned + within.rank;
+  if (hasResidual && within.sumOfSquares <= negligible ** 2 * statistics.rows)
+    throw new AnalysisError('zero_variance');
   return { statistics, crossProducts, subtracted, coefficients: overall.coefficients };
 }
 

@@ -4,7 +4,7 @@ import type { SubjectStatistics } from './subject-statistics.ts';
 /** Sizes of the standard deviations of random effects over the residual one that are tried on small data. */
 const SIZES = [0.1, 1, 10];
 /** Above this many numbers to add up for one evaluation, the moments alone start the search. */
-const LARGE = 20_000;
+const LARGE = 2000;
 
 /**
  * Points to start the search from: variances by moments first, then a coarse grid unless the data are many
