@@ -19,11 +19,10 @@ export function noncentralTCdf(t: number, df: number, noncentrality: number): nu
   requireFinite('noncentrality', noncentrality);
   const constant = Math.log(2) + (df / 2) * Math.log(df / 2) - logGamma(df / 2);
   const logDensity = (u: number): number => constant + df * (u - 0.5 * Math.exp(2 * u));
-  const logIntegrand = (u: number): number =>
-    logDensity(u) + Math.log(normalCdf(t * Math.exp(u) - noncentrality));
-  const peak = highestPoint(logIntegrand, df);
-  const floor = logIntegrand(peak) - 46;
+  const logIntegrand = (u: number): number => logDensity(u) + logNormalCdf(t * Math.exp(u) - noncentrality);
   const width = 1 / Math.sqrt(2 * df);
+  const peak = highestPoint(logIntegrand, df, width / 4);
+  const floor = logIntegrand(peak) - 46;
   const low = edge(logIntegrand, peak, -width, floor);
   const high = edge(logIntegrand, peak, width, floor);
   const integrand = (u: number): number =>
@@ -36,17 +35,26 @@ export function noncentralTUpperTail(t: number, df: number, noncentrality: numbe
   return noncentralTCdf(-t, df, -noncentrality);
 }
 
-/** Maximum of a concave function of u = ln s by golden-section search; the density alone has its maximum at 0. */
-function highestPoint(f: (u: number) => number, df: number): number {
+/** Maximum of a concave function of u = ln s, to `precision`, by golden-section search. */
+function highestPoint(f: (u: number) => number, df: number, precision: number): number {
   const ratio = 0.6180339887498949;
   let low = -Math.max(40, 40 / df);
   let high = 20;
-  for (let i = 0; i < 90; i += 1) {
-    const left = high - ratio * (high - low);
-    const right = low + ratio * (high - low);
-    const [a, b] = [f(left), f(right)];
-    if (a > b || (a === -Infinity && b === -Infinity && left > 0)) high = right;
-    else low = left;
+  let left = high - ratio * (high - low);
+  let right = low + ratio * (high - low);
+  let [atLeft, atRight] = [f(left), f(right)];
+  while (high - low > precision) {
+    if (atLeft > atRight) {
+      high = right;
+      [right, atRight] = [left, atLeft];
+      left = high - ratio * (high - low);
+      atLeft = f(left);
+    } else {
+      low = left;
+      [left, atLeft] = [right, atRight];
+      right = low + ratio * (high - low);
+      atRight = f(right);
+    }
   }
   return 0.5 * (low + high);
 }
@@ -60,4 +68,9 @@ function edge(f: (u: number) => number, from: number, step: number, floor: numbe
     size *= 1.3;
   }
   return u;
+}
+
+/** ln Φ(x), by its leading term where Φ underflows: enough to find the way back to the peak. */
+function logNormalCdf(x: number): number {
+  return x > -37 ? Math.log(normalCdf(x)) : -0.5 * x * x - Math.log(-x) - 0.92;
 }

@@ -95,12 +95,12 @@ const models: Record<DoseResponseModel, Model> = {
     starts: (x, y) =>
       lowestOf(
         [
-          logSteps(1e-3, 1e3, 49),
+          logSteps(1e-3, 1e3, 33),
           [
-            ...logSteps(0.1, 30, 16)
+            ...logSteps(0.1, 30, 12)
               .map((hill) => -hill)
               .reverse(),
-            ...logSteps(0.1, 30, 16),
+            ...logSteps(0.1, 30, 12),
           ],
         ],
         ([ed50, hill]) => proportionalToShare(x, y, (dose) => logLogisticShare(dose, ed50!, hill!)),

@@ -21,7 +21,7 @@ export interface CurveFit {
  *
  * Shape    columns of J are scaled to unit length, so the units of the parameters do not matter
  * Domain   converged when the residual is orthogonal to every column of J within 1e-12 of their lengths, or the fit
- *          is exact to rounding
+ *          is exact to rounding; columns of J that are nearly dependent (a ridge without a lowest point) do not count
  * Source   Marquardt 1963, J SIAM 11:431-441; the criterion as in Bates & Watts 1988, section 2.2.3
  */
 export function fitCurve(
@@ -51,7 +51,7 @@ export function fitCurve(
   return current.offset < 1e-7 ? finish(current, size) : null;
 
   function finish(at: Linearised, n: number): CurveFit | null {
-    const factor = choleskyFactor(at.crossProducts, n, 1e-13);
+    const factor = choleskyFactor(at.crossProducts, n, 1e-10);
     if (typeof factor === 'number' || !curve.isInside(at.parameters)) return null;
     const inverse = choleskyInverse(factor, n);
     const unscaledCovariance = inverse.map(

@@ -6,9 +6,11 @@ import { methodRules, planFields, type FieldSchema } from './plan-schema.ts';
  * The plan with its defaults, or AnalysisError invalid_plan that names the field and what it has to be.
  *
  * Checks the same as `planSchema`: method, fields known, their types, what the method requires, number of levels.
+ * A single text or number is taken for a list of one, as some writers of JSON leave out the brackets.
  */
-export function validatePlan(input: unknown): Plan {
-  if (!isObject(input)) throw invalidPlan('The plan has to be a JSON object.');
+export function validatePlan(given: unknown): Plan {
+  if (!isObject(given)) throw invalidPlan('The plan has to be a JSON object.');
+  const input = withLists(given);
   const method = input['method'];
   if (!isMethodName(method)) throw invalidPlan(`"method" has to be one of ${methodNames.join(', ')}.`);
   for (const [field, value] of Object.entries(input)) {
@@ -29,6 +31,16 @@ export function validatePlan(input: unknown): Plan {
     }
   }
   return { ...defaults, ...input } as unknown as Plan;
+}
+
+function withLists(input: Record<string, unknown>): Record<string, unknown> {
+  const isLone = (field: string, value: unknown) =>
+    Object.hasOwn(planFields, field) &&
+    planFields[field as keyof Plan].type === 'array' &&
+    (typeof value === 'string' || typeof value === 'number');
+  return Object.fromEntries(
+    Object.entries(input).map(([field, value]) => [field, isLone(field, value) ? [value] : value]),
+  );
 }
 
 const defaults = Object.fromEntries(

@@ -24,7 +24,7 @@ export const bootstrapCi: Method = {
   run(plan, table) {
     const { n, difference, rounded, dropped } = varyingPairsOf(plan, table);
     const isMean = plan.statistic === 'mean';
-    const resampled = isMean ? resampleMean(difference, plan) : allResamplesOfMedian(rounded);
+    const resampled = isMean ? resampleMean(difference, rounded, plan) : allResamplesOfMedian(rounded);
     const { bca_z0, bca_acceleration, ...limits } = bootstrapLimits(resampled, plan.confidence);
     return {
       n,
@@ -40,29 +40,30 @@ export const bootstrapCi: Method = {
   },
 };
 
-/** A resample that is the sample again differs from it by rounding only and is not below it. */
-function resampleMean(d: Float64Array, { resamples, seed }: Plan): Resampled {
+/**
+ * Means of resamples of the grid-rounded differences d: their limits are order statistics. A resample that is the sample
+ * again differs from it by rounding only and is not below it.
+ */
+function resampleMean(difference: Float64Array, d: Float64Array, { resamples, seed }: Plan): Resampled {
   const random = seededRandom(seed);
   const n = d.length;
-  const deviation = centred(d);
-  const rounding = 1e-14 * deviation.reduce((sum, value) => sum + Math.abs(value), 0);
-  const deviations = new Float64Array(resamples);
+  const total = d.reduce((sum, value) => sum + value, 0);
+  const rounding = 1e-14 * d.reduce((sum, value) => sum + Math.abs(value), 0);
+  const means = new Float64Array(resamples);
   let below = 0;
   for (let r = 0; r < resamples; r += 1) {
     let sum = 0;
-    for (let i = 0; i < n; i += 1) sum += deviation[random.below(n)]!;
-    if (sum < -rounding) below += 1;
-    deviations[r] = sum / n;
+    for (let i = 0; i < n; i += 1) sum += d[random.below(n)]!;
+    if (sum < total - rounding) below += 1;
+    means[r] = sum / n;
   }
-  const estimate = mean(d);
-  const quantile = quantileOfResamples(deviations.sort());
   return {
-    estimate,
-    bias: mean(deviations),
-    standardError: resamples > 1 ? standardDeviation(deviations) : null,
+    estimate: mean(difference),
+    bias: mean(means) - mean(d),
+    standardError: resamples > 1 ? standardDeviation(means) : null,
     shareBelow: below / resamples,
-    quantile: (p) => estimate + quantile(p),
-    leaveOneOut: deviation.map((value) => -value / (n - 1)),
+    quantile: quantileOfResamples(means.sort()),
+    leaveOneOut: centred(difference).map((value) => -value / (n - 1)),
   };
 }
 

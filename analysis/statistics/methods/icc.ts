@@ -3,7 +3,7 @@ import { AnalysisError } from '../core/analysis-error.ts';
 import { completeCells } from '../core/cells.ts';
 import { roundingGrid } from '../core/grid.ts';
 import type { Method } from '../core/method.ts';
-import { centred } from '../core/moments.ts';
+import { centred, mean } from '../core/moments.ts';
 
 /** Intraclass correlations of subjects by raters: one-way, two-way random and two-way mixed, of single ratings. */
 export const icc: Method = {
@@ -76,43 +76,35 @@ function described(
     [`${name}_f`]: f,
     [`${name}_df_1`]: df1,
     [`${name}_df_2`]: df2,
-    [`${name}_p`]: f === Infinity || Number.isNaN(f) ? NaN : fUpperTail(f, df1, df2),
+    [`${name}_p`]: Number.isNaN(f) ? NaN : fUpperTail(f, df1, df2),
   };
 }
 
-/** Mean squares of the two-way table, from values centred over the whole table. */
+/** Mean squares of the two-way table, of values centred over it; raters that agree exactly leave exactly nothing. */
 function meanSquares(columns: Float64Array[]): MeanSquares {
   const k = columns.length;
   const n = columns[0]!.length;
-  const table = centred(columns.flatMap((column) => [...column]));
+  const all = centred(columns.flatMap((column) => [...column]));
   const grid = roundingGrid(...columns);
-  if (table.every((value) => Math.abs(value) <= 10 * grid)) throw new AnalysisError('zero_variance');
-  const cell = (i: number, j: number) => table[j * n + i]!;
-  const subjectMeans = Float64Array.from(
-    { length: n },
-    (_, i) => columns.reduce((sum, _c, j) => sum + cell(i, j), 0) / k,
+  if (all.every((value) => Math.abs(value) <= 10 * grid)) throw new AnalysisError('zero_variance');
+  const rows = Array.from({ length: n }, (_, i) =>
+    Float64Array.from(columns, (_column, j) => all[j * n + i]!),
   );
-  const raterMeans = columns.map(
-    (_, j) => table.subarray(j * n, (j + 1) * n).reduce((sum, value) => sum + value, 0) / n,
-  );
-  let within = 0;
-  let error = 0;
-  for (let i = 0; i < n; i += 1) {
-    for (let j = 0; j < k; j += 1) {
-      within += (cell(i, j) - subjectMeans[i]!) ** 2;
-      error += (cell(i, j) - subjectMeans[i]! - raterMeans[j]!) ** 2;
-    }
-  }
-  const sumSquares = (values: ArrayLike<number>) =>
-    centred(values).reduce((sum, value) => sum + value ** 2, 0);
+  const deviations = rows.map(centred);
+  const residuals = columns.map((_, j) => centred(deviations.map((row) => row[j]!)));
+  const raterMeans = columns.map((_, j) => mean(all.subarray(j * n, (j + 1) * n)));
   return {
     n,
     k,
-    between: (k * sumSquares(subjectMeans)) / (n - 1),
-    within: within / (n * (k - 1)),
-    raters: (n * sumSquares(raterMeans)) / (k - 1),
-    error: error / ((n - 1) * (k - 1)),
+    between: (k * squaresOf(centred(rows.map(mean)))) / (n - 1),
+    within: deviations.reduce((sum, row) => sum + squaresOf(row), 0) / (n * (k - 1)),
+    raters: (n * squaresOf(centred(raterMeans))) / (k - 1),
+    error: residuals.reduce((sum, column) => sum + squaresOf(column), 0) / ((n - 1) * (k - 1)),
   };
+}
+
+function squaresOf(values: Float64Array): number {
+  return values.reduce((sum, value) => sum + value ** 2, 0);
 }
 
 /** Shrout & Fleiss 1979, Psychol Bull 86:420-428: exact limits of ICC(1,1) and ICC(3,1). */

@@ -1,6 +1,7 @@
 import { findRoot } from '../../numerics/find-root.ts';
 import { logGamma } from '../../numerics/log-gamma.ts';
 import { noncentralTCdf, noncentralTUpperTail } from '../../numerics/noncentral-t.ts';
+import { normalQuantile } from '../../numerics/normal.ts';
 import type { Method } from '../core/method.ts';
 import { correlation, mean, standardDeviation, variance } from '../core/moments.ts';
 import { pairedTTest, varyingPairsOf } from '../core/paired-difference.ts';
@@ -50,18 +51,20 @@ function smallSampleCorrection(df: number): number {
 /** δ with P(T ≤ t | δ) = 1 − α/2 and α/2: the noncentralities that the observed t does not contradict. */
 function noncentralityLimits(t: number, df: number, confidence: number): [number, number] {
   const tail = (1 - confidence) / 2;
-  const spread = 5 + Math.abs(t);
-  const low = limit((delta) => noncentralTUpperTail(t, df, delta), t, -spread);
-  const high = limit((delta) => noncentralTCdf(t, df, delta), t, spread);
-  return [low, high];
+  const z = -normalQuantile(tail);
+  const spread = Math.sqrt(1 + (t * t) / (2 * df));
+  return [
+    solve((delta) => noncentralTUpperTail(t, df, delta), t - z * spread, -spread),
+    solve((delta) => noncentralTCdf(t, df, delta), t + z * spread, spread),
+  ];
 
-  /** The tail shrinks from the start in the direction of the step. */
-  function limit(probability: (delta: number) => number, start: number, step: number): number {
-    const gap = (delta: number) => Math.log(Math.max(probability(delta), 1e-300)) - Math.log(tail);
-    let near = start;
-    let far = start + step;
-    while (gap(far) > 0) [near, far] = [far, far + 2 * (far - near)];
-    while (gap(near) < 0) near -= step;
+  /** From a normal approximation as the guess; the probability shrinks in the direction of the step. */
+  function solve(probability: (delta: number) => number, guess: number, step: number): number {
+    const gap = (delta: number) => Math.log(Math.max(probability(delta), 1e-300) / tail);
+    let near = guess - step / 4;
+    let far = guess + step / 4;
+    for (let stride = step; gap(near) < 0; stride *= 2) near -= stride;
+    for (let stride = step; gap(far) > 0; stride *= 2) far += stride;
     return findRoot(gap, near, far, 1e-13);
   }
 }

@@ -42,14 +42,17 @@ function extremeness(d: Float64Array, direction: Direction): (sum: number) => bo
 /** All sign assignments: each difference doubles the list of sums. */
 function countAll(d: Float64Array, isExtreme: (sum: number) => boolean): number {
   const sums = new Float64Array(2 ** d.length);
-  d.forEach((value, i) => {
-    const filled = 2 ** i;
+  let filled = 1;
+  for (const value of d) {
     for (let k = 0; k < filled; k += 1) {
       sums[filled + k] = sums[k]! - value;
-      sums[k]! += value;
+      sums[k] = sums[k]! + value;
     }
-  });
-  return sums.reduce((count, sum) => (isExtreme(sum) ? count + 1 : count), 0);
+    filled *= 2;
+  }
+  let count = 0;
+  for (const sum of sums) if (isExtreme(sum)) count += 1;
+  return count;
 }
 
 function countSampled(
