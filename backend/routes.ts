@@ -3,6 +3,7 @@ import type { RouteTable } from './http/route.ts';
 import { declareAccountRoutes } from './modules/accounts/index.ts';
 import { declareAnalysisRoutes } from './modules/analysis/index.ts';
 import { declareCaptureRoutes } from './modules/capture/index.ts';
+import { declareExportRoutes } from './modules/exports/index.ts';
 import { declareParticipantsRoutes } from './modules/participants/index.ts';
 import { declareMonitoringRoutes } from './modules/monitoring/index.ts';
 import { declareRecordRoutes } from './modules/records/index.ts';
@@ -19,4 +20,5 @@ export function declareRoutes(table: RouteTable, deps: Deps): void {
   declareMonitoringRoutes(table, deps);
   declareRecordRoutes(table, deps);
   declareAnalysisRoutes(table, deps);
+  declareExportRoutes(table, deps);
 }

@@ -6,6 +6,7 @@ import { failProgress } from './jobs/progress.ts';
 import { startQueue, type Queue, type QueueTiming } from './jobs/queue.ts';
 import { tidy } from './jobs/tidy.ts';
 import { cutJob, runJob } from './modules/analysis/index.ts';
+import { exportJob } from './modules/exports/index.ts';
 import type { Mailer } from './services/mail.ts';
 
 export interface WorkerDeps extends Deps {
@@ -27,6 +28,7 @@ export async function startWorker(
   queue.work('tidy', tidy(fork));
   queue.work('cut.build', cutJob(fork, objectStore));
   queue.work('run.execute', runJob(fork, objectStore));
+  queue.work('export.build', exportJob(fork, objectStore));
   queue.work('dead', async ({ data: { jobKey, mailId } }) => {
     if (jobKey) await failProgress(fork(), jobKey);
     if (mailId) await failMail(fork(), mailId);

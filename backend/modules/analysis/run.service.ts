@@ -1,5 +1,4 @@
 import type { EntityManager } from '@mikro-orm/postgresql';
-import { createHash } from 'node:crypto';
 import { fileURLToPath } from 'node:url';
 import { Piscina } from 'piscina';
 import { engineVersion, type StudyResult } from '#analysis/study/run-study.ts';
@@ -19,6 +18,7 @@ import { readCut } from './cut-file.ts';
 import { loadPlanDraft, planProblems } from './plan.service.ts';
 import { studyDataOf } from './study-data.ts';
 import { systemActor } from './system-actor.ts';
+import { verifiedBytes } from './verified-bytes.ts';
 
 const resultLimit = 64 * 1024 ** 2;
 
@@ -93,7 +93,9 @@ export function runJob(fork: () => EntityManager, objectStore: ObjectStore): Job
       const cut = await em.findOneOrFail(CutSchema, run.cutId);
       const plan = await contentOf(em, run);
       await report(0, 3, 'reading the cut');
-      const { data } = await studyDataOf(readCut(verified(await objectStore.get(cut.objectKey), cut.sha256)));
+      const { data } = await studyDataOf(
+        readCut(verifiedBytes(await objectStore.get(cut.objectKey), cut.sha256)),
+      );
       await report(1, 3, 'computing');
       const answer = (await engine.run({ plan, data }, { signal })) as
         { result: StudyResult } | { refused: string };
@@ -131,23 +133,13 @@ async function storeResult(objectStore: ObjectStore, result: StudyResult) {
   return { resultKey: key, resultSha256: sha256(bytes) };
 }
 
-/** Passes bytes on and refuses at the end when they are not those that were stored. */
-async function* verified(bytes: AsyncIterable<Uint8Array>, expected: string): AsyncGenerator<Uint8Array> {
-  const hash = createHash('sha256');
-  for await (const chunk of bytes) {
-    hash.update(chunk);
-    yield chunk;
-  }
-  if (hash.digest('hex') !== expected) throw new Error('The stored cut no longer matches its hash.');
-}
-
 /** The stored result of a finished run, its bytes checked against the hash on record. */
 export async function readResult(objectStore: ObjectStore, run: Run): Promise<string> {
   if (run.state !== 'done' || run.resultKey == null || run.resultSha256 == null)
     throw notFound('A result of this run');
   const chunks: Uint8Array[] = [];
   try {
-    for await (const chunk of verified(await objectStore.get(run.resultKey), run.resultSha256))
+    for await (const chunk of verifiedBytes(await objectStore.get(run.resultKey), run.resultSha256))
       chunks.push(chunk);
   } catch {
     throw new Problem(409, 'integrity-broken', 'The stored result no longer matches its hash; run it again.');

@@ -1,0 +1,2 @@
+export { declareExportRoutes } from './export.routes.ts';
+export { decideExport, exportJob, requestExport } from './export.service.ts';
