@@ -6,6 +6,7 @@ import { stepProblems } from './check-run-sheet.ts';
 import { measureLevel } from './protocol-levels.ts';
 import {
   measuredQuantities,
+  type LiveInput,
   type LiveQuantity,
   type Measure,
   type Protocol,
@@ -95,24 +96,21 @@ function liveProblems(
   const definition = library.get(live.quantity);
   if (!definition)
     return [{ pointer: `${pointer}/quantity`, message: `The library has no quantity ${live.quantity}` }];
-  const measured = new Set(
-    protocol.visitTypes.flatMap(({ measures }) => measures.map(({ quantity }) => quantity)),
-  );
   const problems: ProtocolProblem[] = [];
   for (const [name, input] of Object.entries(live.inputs)) {
     const place = `${pointer}/inputs/${name}`;
     const needed = definition.inputs.find((known) => known.name === name);
+    const given = unitOfInput(input, live, protocol, library);
     if (!needed) {
       const known = definition.inputs.map((one) => one.name).join(', ');
       problems.push({ pointer: place, message: `${live.quantity} has no input ${name}; it has ${known}` });
-      continue;
-    }
-    if (typeof input === 'string' && !measured.has(input)) {
-      problems.push({ pointer: place, message: `No visit measures ${input}` });
-    }
-    const unit = typeof input === 'string' ? measuredQuantities[input] : input.unit;
-    if (!sameUnit(unit, needed.unit) && !(needed.accepts?.(unit) ?? false)) {
-      problems.push({ pointer: place, message: `${name} is taken in ${needed.unit}, this is in ${unit}` });
+    } else if ('message' in given) {
+      problems.push({ pointer: place, message: given.message });
+    } else if (!sameUnit(given.unit, needed.unit) && !(needed.accepts?.(given.unit) ?? false)) {
+      problems.push({
+        pointer: place,
+        message: `${name} is taken in ${needed.unit}, this is in ${given.unit}`,
+      });
     }
   }
   for (const { name, optional } of definition.inputs) {
@@ -121,4 +119,22 @@ function liveProblems(
     }
   }
   return problems;
+}
+
+function unitOfInput(
+  input: LiveInput,
+  live: LiveQuantity,
+  { visitTypes, liveQuantities }: Protocol,
+  library: QuantityLibrary,
+): { unit: string } | { message: string } {
+  if (typeof input === 'string') {
+    const measured = visitTypes.some(({ measures }) => measures.some(({ quantity }) => quantity === input));
+    return measured ? { unit: measuredQuantities[input] } : { message: `No visit measures ${input}` };
+  }
+  if ('unit' in input) return input;
+  const before = liveQuantities.slice(0, liveQuantities.indexOf(live)).find(({ key }) => key === input.live);
+  const unit = before && library.get(before.quantity)?.unit;
+  return unit === undefined
+    ? { message: `No live quantity ${input.live} is listed before this one` }
+    : { unit };
 }

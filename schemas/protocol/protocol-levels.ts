@@ -1,6 +1,6 @@
 import type { CompiledInstrument } from '../instruments/compiled-instrument.ts';
 import type { Level } from '../vocabulary/states.ts';
-import type { LiveQuantity, Measure, Protocol } from './protocol.ts';
+import type { LiveInput, Measure, Protocol } from './protocol.ts';
 import { referencedField, type Place } from './referenced-field.ts';
 
 /** What a measure reveals: what its author said, and what the fields reveal from which it comes (RB-07). */
@@ -32,9 +32,13 @@ export function withUnblindingSpread(
       measures.filter(({ unblinding }) => unblinding).map(({ quantity }) => quantity),
     ),
   );
-  const reveals = (live: LiveQuantity) =>
-    live.unblinding ||
-    Object.values(live.inputs).some((input) => typeof input === 'string' && hidden.has(input));
-  const liveQuantities = protocol.liveQuantities.map((live) => ({ ...live, unblinding: reveals(live) }));
+  const hiddenLive = new Set<string>();
+  const reveals = (input: LiveInput) =>
+    typeof input === 'string' ? hidden.has(input) : 'live' in input && hiddenLive.has(input.live);
+  const liveQuantities = protocol.liveQuantities.map((live) => {
+    const unblinding = live.unblinding || Object.values(live.inputs).some(reveals);
+    if (unblinding) hiddenLive.add(live.key);
+    return { ...live, unblinding };
+  });
   return { ...protocol, visitTypes, liveQuantities };
 }

@@ -113,7 +113,11 @@ const liveQuantity = closed(
     inputs: {
       type: 'object',
       additionalProperties: {
-        oneOf: [quantity, closed({ value: { type: 'number' }, unit: text(40) }, ['value', 'unit'])],
+        oneOf: [
+          quantity,
+          closed({ value: { type: 'number' }, unit: text(40) }, ['value', 'unit']),
+          closed({ live: key }, ['live']),
+        ],
       },
       minProperties: 1,
       maxProperties: 20,

@@ -125,11 +125,13 @@ export interface LiveQuantity {
   label: string;
   /** A name of the analysis library. */
   quantity: string;
-  /** The library's input name → a measured quantity, or a constant with its unit. */
-  inputs: Record<string, MeasuredQuantity | { value: number; unit: string }>;
+  /** The library's input name → what is measured, a constant with its unit, or a live quantity listed before. */
+  inputs: Record<string, LiveInput>;
   /** Hidden from blinded members until unblinding: a fall of a quarter tells the arm. */
   unblinding: boolean;
 }
+
+export type LiveInput = MeasuredQuantity | { value: number; unit: string } | { live: string };
 
 /** A place in a protocol that needs attention, and what to do about it. */
 export interface ProtocolProblem {

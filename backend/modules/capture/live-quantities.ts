@@ -62,7 +62,9 @@ async function quantitiesOf(em: EntityManager, visit: Visit): Promise<Row[]> {
     ...measures.map(measureRow),
     ...timePoints.flatMap((timePoint) => {
       const here = measures.filter((measure) => measure.timePoint === timePoint);
-      return content.liveQuantities.flatMap((live) => computedRow(live, timePoint, here) ?? []);
+      const rows: Row[] = [];
+      for (const live of content.liveQuantities) rows.push(...computedRow(live, timePoint, here, rows));
+      return rows;
     }),
   ];
 }
@@ -77,25 +79,39 @@ const measureRow = (measure: VisitMeasure): Row => ({
     : { value: measure.value, unit: measure.unit }),
 });
 
-/** Nothing when the time point does not measure what the quantity needs. */
-function computedRow(live: LiveQuantity, timePoint: string, measures: readonly VisitMeasure[]): Row | null {
+/** Nothing when the time point does not measure what the quantity needs; `before` holds the rows listed earlier. */
+function computedRow(
+  live: LiveQuantity,
+  timePoint: string,
+  measures: readonly VisitMeasure[],
+  before: readonly Row[],
+): Row[] {
   const inputs: Record<string, { value: number; unit: string }> = {};
   let { unblinding } = live;
   let waiting: string | null = null;
   for (const [name, source] of Object.entries(live.inputs)) {
-    if (typeof source !== 'string') {
+    if (typeof source !== 'string' && 'unit' in source) {
       inputs[name] = source;
       continue;
     }
+    if (typeof source !== 'string') {
+      const row = before.find(({ key }) => key === source.live);
+      if (row === undefined) return [];
+      unblinding ||= row.unblinding;
+      if (typeof row.value === 'number' && row.unit !== undefined)
+        inputs[name] = { value: row.value, unit: row.unit };
+      else waiting ??= `waits for ${row.label}`;
+      continue;
+    }
     const measure = measures.find(({ quantity }) => quantity === source);
-    if (measure === undefined) return null;
+    if (measure === undefined) return [];
     unblinding ||= measure.unblinding;
     if (measure.value === null) waiting ??= `waits for ${measure.waitingFor}`;
     else inputs[name] = { value: measure.value, unit: measure.unit };
   }
   const row = { key: live.key, label: live.label, timePoint, unblinding };
-  if (waiting !== null) return { ...row, waiting };
-  return { ...row, ...computed(live.quantity, inputs) };
+  if (waiting !== null) return [{ ...row, waiting }];
+  return [{ ...row, ...computed(live.quantity, inputs) }];
 }
 
 function computed(name: string, inputs: Record<string, { value: number; unit: string }>): Partial<Row> {

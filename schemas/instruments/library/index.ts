@@ -25,6 +25,8 @@ import coldPressor from './cold-pressor.json' with { type: 'json' };
 import coldPressorSamples from './cold-pressor.samples.json' with { type: 'json' };
 import drugInfusion from './drug-infusion.json' with { type: 'json' };
 import drugInfusionSamples from './drug-infusion.samples.json' with { type: 'json' };
+import oralDose from './oral-dose.json' with { type: 'json' };
+import oralDoseSamples from './oral-dose.samples.json' with { type: 'json' };
 import cardiacOutput from './cardiac-output.json' with { type: 'json' };
 import cardiacOutputSamples from './cardiac-output.samples.json' with { type: 'json' };
 import concomitantMedication from './concomitant-medication.json' with { type: 'json' };
@@ -64,6 +66,7 @@ export const libraryInstruments: readonly LibraryInstrument[] = [
   instrument(flowMediatedDilation, flowMediatedDilationSamples),
   instrument(coldPressor, coldPressorSamples),
   instrument(drugInfusion, drugInfusionSamples),
+  instrument(oralDose, oralDoseSamples),
   instrument(cardiacOutput, cardiacOutputSamples),
   instrument(concomitantMedication, concomitantMedicationSamples),
   instrument(adverseEvent, adverseEventSamples),

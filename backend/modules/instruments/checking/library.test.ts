@@ -36,8 +36,8 @@ describe.each(libraryInstruments.map((instrument) => [instrument.key, instrument
 
 // proves RB-07
 describe('the library', () => {
-  it('hides what tells the arm: blood, viscosity, exchange, infusion', () => {
+  it('hides what tells the arm: blood, viscosity, exchange, dose', () => {
     const hidden = libraryInstruments.filter(({ schema }) => schema.unblinding).map(({ key }) => key);
-    expect(hidden).toEqual(['blood-sample', 'viscometry', 'blood-exchange', 'drug-infusion']);
+    expect(hidden).toEqual(['blood-sample', 'viscometry', 'blood-exchange', 'drug-infusion', 'oral-dose']);
   });
 });
