@@ -12,7 +12,7 @@ import { assertPlausible, openIdentifiers, sealedIdentifiers } from './identifie
 import { tellOthers } from './notify.ts';
 import type { Participant } from './participant.entity.ts';
 import { readableParticipant } from './participant.queries.ts';
-import { urgentAccessUntil, urgentUntil } from './urgent-access.ts';
+import { urgentAccessUntil } from './urgent-access.ts';
 
 const aboutIdentifiers = ({ id, siteId }: Participant) => ({
   type: 'direct-identifiers',
@@ -35,8 +35,8 @@ export async function readIdentifiers(
   const { studyId, siteId } = participant;
   const urgent = !may('read', 'DirectIdentifiers', { studyId, siteId });
   if (urgent) authorize('open', 'DirectIdentifiers', { studyId, siteId });
-  const openUntil = urgent && reason === null ? await urgentAccessUntil(em, participantId) : null;
-  if (urgent && reason === null && openUntil === null) throw reasonMissing();
+  if (urgent && reason === null && (await urgentAccessUntil(em, participantId)) === null)
+    throw reasonMissing();
   const row = await act(
     em,
     { kind: 'identifiers-read', subject: aboutIdentifiers(participant), reason },
@@ -46,7 +46,7 @@ export async function readIdentifiers(
       return storedIdentifiers(tx, participantId);
     },
   );
-  const until = urgent ? (openUntil ?? urgentUntil(new Date())) : null;
+  const until = urgent ? await urgentAccessUntil(em, participantId) : null;
   return { ...openIdentifiers(keys, row), revision: row.revision, until: until?.toISOString() ?? null };
 }
 

@@ -3,11 +3,8 @@ import { currentActor, currentPersonId, currentStudyId } from '#backend/http/act
 
 const minutes = 15;
 
-/** When an urgent look that begins now ends (AC-07). */
-export const urgentUntil = (opened: Date): Date => new Date(opened.getTime() + minutes * 60_000);
-
 /**
- * When the actor's running urgent access to this participant ends; null when none is running. It is read from the
+ * When the actor's running urgent access to this participant ends (AC-07); null when none is running. It is read from the
  * trail: the last look with a reason opened it, and nothing has to be closed.
  */
 export async function urgentAccessUntil(em: EntityManager, participantId: string): Promise<Date | null> {
@@ -19,6 +16,6 @@ export async function urgentAccessUntil(em: EntityManager, participantId: string
     [currentStudyId(), `direct-identifiers/${participantId}`, currentPersonId(), currentActor().role],
   );
   if (last === undefined) return null;
-  const until = urgentUntil(new Date(last.at));
+  const until = new Date(new Date(last.at).getTime() + minutes * 60_000);
   return until.getTime() > Date.now() ? until : null;
 }
