@@ -1,4 +1,3 @@
-import type { RJSFSchema } from '@rjsf/utils';
 import { memo, useCallback, useId, useMemo, useSyncExternalStore } from 'react';
 import type { FindingDto, Operation } from '#schemas/api/capture.ts';
 import type { CompiledInstrument } from '#schemas/instruments/compiled-instrument.ts';

@@ -1,10 +1,14 @@
 import { useState } from 'react';
 import type { CompiledField } from '#schemas/instruments/compiled-instrument.ts';
 import { missingReasonLabel } from '#schemas/vocabulary/missing-reasons.ts';
+import { classNames } from '../components/class-names.ts';
 import { useFieldState, useForm } from './form-context.ts';
 
-/** "Not done: why" for a field: a missing value is said, with a reason, and never looks like zero or no (DE-06). */
-export function MissingControl({ field }: { field: CompiledField }) {
+/**
+ * "Not done: why" for a field: a missing value is said, with a reason, and never looks like zero or no (DE-06). Where nothing
+ * is required the control waits until the field is in hand.
+ */
+export function MissingControl({ field, required }: { field: CompiledField; required: boolean }) {
   const { store, readOnly } = useForm();
   const { value, draft, missing } = useFieldState(field.pointer);
   const [open, setOpen] = useState(false);
@@ -15,7 +19,10 @@ export function MissingControl({ field }: { field: CompiledField }) {
         type="button"
         data-print="hide"
         aria-label={`${field.label}: not done`}
-        className="min-h-6 text-sm text-ink-soft hover:text-venous hover:underline"
+        className={classNames(
+          'min-h-6 shrink-0 text-sm whitespace-nowrap text-ink-soft hover:text-venous hover:underline',
+          !required && 'opacity-0 group-focus-within/field:opacity-100 group-hover/field:opacity-100',
+        )}
         onClick={() => setOpen(true)}
       >
         not done?

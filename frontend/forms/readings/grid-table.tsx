@@ -23,16 +23,20 @@ const head = 'px-1 py-1 text-sm font-medium text-ink-soft';
 export function GridTable({ fields, required, shape, onKeyDown, onPaste, onTurnAside }: GridTableProps) {
   const { store } = useForm();
   const numbers = Array.from({ length: shape.readings }, (_, reading) => reading);
+  const allHidden = fields.every(({ pointer }) => store.get(pointer).hidden);
   const isAside = (field: CompiledField, reading: number) =>
     rejectionOf(store.get, field, reading) !== undefined;
-  const asideButton = (place: Place) => (
-    <AsideButton
-      label={shape.fields > 1 && shape.readingsAcross ? `${fields[place.field]!.label}, reading` : 'Reading'}
-      reading={place.reading}
-      aside={isAside(fields[place.field]!, place.reading)}
-      onTurn={() => onTurnAside(place)}
-    />
-  );
+  const asideButton = (place: Place) =>
+    !allHidden && (
+      <AsideButton
+        label={
+          shape.fields > 1 && shape.readingsAcross ? `${fields[place.field]!.label}, reading` : 'Reading'
+        }
+        reading={place.reading}
+        aside={isAside(fields[place.field]!, place.reading)}
+        onTurn={() => onTurnAside(place)}
+      />
+    );
   return (
     <div className="overflow-x-auto">
       {/* The keys belong to the inputs inside; the table only listens for all of them. */}
@@ -58,7 +62,7 @@ export function GridTable({ fields, required, shape, onKeyDown, onPaste, onTurnA
             <tbody>
               {fields.map((field, at) => (
                 <tr key={field.pointer}>
-                  <th scope="row" className="py-1 pr-3 text-left text-sm font-normal">
+                  <th scope="row" className="min-w-36 py-1 pr-3 text-left text-sm font-normal">
                     <FieldHead field={field} required={required.includes(field.pointer)} />
                   </th>
                   <WholeLine field={field} span={shape.readings + 1}>
@@ -132,11 +136,11 @@ export function GridTable({ fields, required, shape, onKeyDown, onPaste, onTurnA
 function FieldHead({ field, required }: { field: CompiledField; required: boolean }) {
   const { hidden } = useFieldState(field.pointer);
   return (
-    <span className="flex flex-wrap items-baseline gap-x-2">
+    <span className="group/field flex flex-wrap items-baseline gap-x-2">
       <span>
         <LabelText label={field.label} unit={field.unit} required={required} />
       </span>
-      {!hidden && <MissingControl field={field} />}
+      {!hidden && <MissingControl field={field} required={required} />}
     </span>
   );
 }
@@ -200,6 +204,7 @@ function AsideButton({ label, reading, aside, onTurn }: AsideButtonProps) {
       data-print="hide"
       tabIndex={-1}
       aria-label={`${label} ${reading + 1}: ${act}`}
+      title={act}
       className="ml-1 min-h-6 min-w-6 rounded-sm text-xs font-normal text-ink-soft hover:text-venous hover:underline"
       onClick={onTurn}
     >

@@ -1,10 +1,9 @@
 import { memo } from 'react';
-import { readableUnit, spokenUnit } from '../../lib/format/units.ts';
+import { spokenUnit } from '../../lib/format/units.ts';
 import type { CompiledField } from '#schemas/instruments/compiled-instrument.ts';
 import { rejectionReasonLabel } from '#schemas/vocabulary/rejection-reasons.ts';
 import { DraftInput } from '../draft-input.tsx';
-import { useFieldState, useForm } from '../form-context.ts';
-import { useFieldVersions } from '../form-context.ts';
+import { useFieldState, useFieldVersions, useForm } from '../form-context.ts';
 
 interface ReadingCellProps {
   field: CompiledField;
@@ -32,8 +31,8 @@ export const ReadingCell = memo(function ReadingCell({ field, fieldIndex, readin
           readOnly={reason !== undefined}
           className={
             reason === undefined
-              ? 'h-11 min-w-16 px-1! text-center'
-              : 'h-11 min-w-16 bg-bone px-1! text-center text-ink-soft line-through'
+              ? 'mx-auto block h-11 w-16! px-1! text-center'
+              : 'mx-auto block h-11 w-16! bg-bone px-1! text-center text-ink-soft line-through'
           }
         />
       ) : (
@@ -53,15 +52,4 @@ export function rejectionOf(
   return partners
     .map((pointer) => get(`${pointer}/${reading}`).rejected)
     .find((reason) => reason !== undefined);
-}
-
-/** "mL/min per 100 mL" behind a label in a grid. */
-export function UnitOf({ field }: { field: CompiledField }) {
-  if (!field.unit) return null;
-  return (
-    <span aria-hidden className="font-normal text-ink-soft">
-      {' '}
-      {readableUnit(field.unit)}
-    </span>
-  );
 }

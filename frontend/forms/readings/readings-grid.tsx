@@ -83,6 +83,7 @@ export function ReadingsGrid({
     }
   };
 
+  const allHidden = fields.every(({ pointer }) => store.get(pointer).hidden);
   const asideField = aside && fields[aside.field];
   return (
     <div className="flex flex-col gap-2 sm:col-span-full">
@@ -95,7 +96,7 @@ export function ReadingsGrid({
         onTurnAside={turnAside}
       />
       <ReadingProblems fields={fields} readings={readings} left={left} onSeen={() => setLeft([])} />
-      {!readOnly && (
+      {!readOnly && !allHidden && (
         <div data-print="hide" className="flex flex-wrap items-center gap-x-4 gap-y-2">
           <GridKeysHint />
           {readings < most && <Button onClick={() => setMore(more + 1)}>One more reading</Button>}

@@ -7,15 +7,16 @@ import { HiddenValue } from '../../components/pen-mark.tsx';
 import { DraftProblem } from '../draft-problem.tsx';
 import { FindingList } from '../finding-list.tsx';
 import { useAddress, useFieldState, useForm } from '../form-context.ts';
+import { isLong } from '../widgets/long-text.ts';
 import { MissingControl, MissingValue } from '../missing-control.tsx';
 
 /** Around every field: label with unit, the control, help, findings, and the reason when there is no value. */
-export function FieldTemplate({ id, children, required = false }: FieldTemplateProps) {
+export function FieldTemplate({ id, children, schema, required = false }: FieldTemplateProps) {
   const address = useAddress(id);
   const field = useForm().store.compiled.field(address);
   if (!field) return children;
   return (
-    <FieldFrame id={id} field={field} required={required}>
+    <FieldFrame id={id} field={field} required={required} wide={isWide(field, schema.maxLength)}>
       {children}
     </FieldFrame>
   );
@@ -25,10 +26,11 @@ interface FieldFrameProps {
   id: string;
   field: CompiledField;
   required: boolean;
+  wide: boolean;
   children: ReactNode;
 }
 
-function FieldFrame({ id, field, required, children }: FieldFrameProps) {
+function FieldFrame({ id, field, required, wide, children }: FieldFrameProps) {
   const { hidden, missing } = useFieldState(field.pointer);
   const label = <LabelText label={field.label} unit={field.unit} required={required} />;
   const control = hidden ? (
@@ -53,13 +55,12 @@ function FieldFrame({ id, field, required, children }: FieldFrameProps) {
     </>
   );
   const canMiss = !field.derived && !hidden;
-  const wide = field.visibility.freeText || field.type === 'choices';
   if (isGroup(field)) {
     return (
-      <fieldset className={classNames('flex min-w-0 flex-col gap-1', wide && 'sm:col-span-full')}>
+      <fieldset className={classNames('group/field flex min-w-0 flex-col gap-1', wide && 'sm:col-span-full')}>
         <legend className="mb-1 flex w-full items-baseline justify-between gap-3 text-sm">
           <span>{label}</span>
-          {canMiss && <MissingControl field={field} />}
+          {canMiss && <MissingControl field={field} required={required} />}
         </legend>
         {rest}
       </fieldset>
@@ -67,15 +68,18 @@ function FieldFrame({ id, field, required, children }: FieldFrameProps) {
   }
   const named = hidden || missing !== undefined || field.derived;
   return (
-    <div className={classNames('flex min-w-0 flex-col gap-1', wide && 'sm:col-span-full')}>
+    <div className={classNames('group/field flex min-w-0 flex-col gap-1', wide && 'sm:col-span-full')}>
       <div className="flex items-baseline justify-between gap-3 text-sm">
         {named ? <span id={`${id}/label`}>{label}</span> : <label htmlFor={id}>{label}</label>}
-        {canMiss && <MissingControl field={field} />}
+        {canMiss && <MissingControl field={field} required={required} />}
       </div>
       {rest}
     </div>
   );
 }
+
+const isWide = (field: CompiledField, maxLength: number | undefined): boolean =>
+  field.type === 'choices' || isLong(field, maxLength);
 
 /** Several controls under one name. */
 export const isGroup = ({ type, choices }: CompiledField): boolean =>

@@ -12,7 +12,7 @@ export function DerivedWidget({ id }: { id: string }) {
   return (
     <output id={id} aria-labelledby={`${id}/label`} className="flex min-h-9 flex-col justify-center gap-0.5">
       {digits === undefined ? (
-        <span className="text-ink-soft">computed when its fields are filled in</span>
+        <span className="text-sm text-ink-soft">computed when its fields are filled in</span>
       ) : (
         <Quantity written={digits} unit={field?.unit} large />
       )}

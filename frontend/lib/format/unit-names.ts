@@ -37,6 +37,7 @@ export const atoms: Record<string, UnitName> = {
   'm[Hg]': { symbol: 'mHg', one: 'metre of mercury', many: 'metres of mercury' },
   'm[H2O]': { symbol: 'mH₂O', one: 'metre of water', many: 'metres of water' },
   '[PRU]': { symbol: 'PRU', one: 'peripheral resistance unit' },
+  '[g]': { symbol: 'g', one: 'standard gravity', many: 'times gravity' },
   '[iU]': { symbol: 'IU', one: 'international unit' },
   '[pH]': { symbol: 'pH', one: 'pH', many: 'pH' },
   '10*': { symbol: '10', one: 'ten', many: 'ten' },
