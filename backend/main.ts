@@ -1,6 +1,5 @@
 import { StartError } from './config/start-error.ts';
 import { logger, stackOf } from './http/logger.ts';
-import { demoAccounts } from './modules/accounts/index.ts';
 import { start, type Started } from './start.ts';
 
 const say = (text: string) => process.stdout.write(`  ${text}\n`);
@@ -19,7 +18,7 @@ process.on('unhandledRejection', (error) =>
 process.stdout.write('Vesselry is starting\n');
 try {
   const started = await start({ dev: process.argv.includes('--dev'), say, signal: stopping.signal });
-  greet(started);
+  await greet(started);
   await asked;
   process.stdout.write('\nstopping\n');
   await started.stop();
@@ -32,9 +31,10 @@ try {
   process.exit(1);
 }
 
-function greet({ origin, settings }: Started): void {
-  process.stdout.write(`\nVesselry is running at ${origin}\n`);
+async function greet({ settings }: Started): Promise<void> {
+  process.stdout.write(`\nVesselry is running at ${settings.publicUrl}\n`);
   if (settings.demo) {
+    const { demoAccounts } = await import('./modules/accounts/index.ts');
     process.stdout.write('\nDemo accounts (invented people; never in production):\n');
     for (const { email, password, roles } of demoAccounts) say(`${email}  ${password}  ${roles}`);
   }
