@@ -78,6 +78,8 @@ async function planOf(em: EntityManager, body: RequestRunBody, cut: Cut) {
 /** Works in threads of its own, so that the server answers others meanwhile. */
 const engine = new Piscina({
   filename: fileURLToPath(new URL('./engine.worker.ts', import.meta.url)),
+  // A test runner does not run under tsx; the server does, and naming it twice does no harm.
+  execArgv: ['--import', 'tsx'],
   minThreads: 0,
   maxThreads: 2,
   idleTimeout: 30_000,
