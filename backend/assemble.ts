@@ -1,4 +1,4 @@
-import type { RequestListener } from 'node:http';
+import type { RequestListener, Server } from 'node:http';
 import { join } from 'node:path';
 import type { LocalSecrets } from './config/local-secrets.ts';
 import type { Settings } from './config/settings.ts';
@@ -6,6 +6,7 @@ import type { Say } from './config/start-error.ts';
 import { openBucket, openDatabase, openMailServer, type OnStop } from './local-services.ts';
 import { prepareDatabase } from './prepare-database.ts';
 import { openRuntime } from './runtime.ts';
+import type { WebServer } from './web-server.ts';
 
 /** Runs one step of the start, its name shown. */
 export type Step = <T>(name: string, work: () => Promise<T>) => Promise<T>;
@@ -13,6 +14,7 @@ export type Step = <T>(name: string, work: () => Promise<T>) => Promise<T>;
 interface Place {
   dataFolder: string;
   secrets: LocalSecrets;
+  web: WebServer;
   dev: boolean;
   say: Say;
   step: Step;
@@ -21,7 +23,7 @@ interface Place {
 
 /** Brings up what the product stands on, then the product; answers what serves its requests. */
 export async function assemble(settings: Settings, place: Place): Promise<RequestListener> {
-  const { dataFolder, say, step, onStop } = place;
+  const { dataFolder, web, say, step, onStop } = place;
   const database = await step(settings.database ? 'database, as given' : 'database, our own PostgreSQL', () =>
     openDatabase(settings, place, onStop),
   );
@@ -42,15 +44,15 @@ export async function assemble(settings: Settings, place: Place): Promise<Reques
   });
   await step('worker', () => runtime.work());
   const api = runtime.application.express as RequestListener;
-  return place.dev ? step('client with reload', () => withReload(api, onStop)) : api;
+  return place.dev ? step('client with reload', () => withReload(api, web.server, onStop)) : api;
 }
 
 /** In development Vite serves the client from its sources; the API stays ours. */
-async function withReload(api: RequestListener, onStop: OnStop): Promise<RequestListener> {
+async function withReload(api: RequestListener, server: Server, onStop: OnStop): Promise<RequestListener> {
   const { createServer } = await import('vite');
   const vite = await createServer({
     configFile: join(import.meta.dirname, '../vite.config.ts'),
-    server: { middlewareMode: true, hmr: { port: 0 } },
+    server: { middlewareMode: true, hmr: { server } },
     appType: 'spa',
   });
   onStop(() => vite.close());

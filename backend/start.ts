@@ -32,7 +32,7 @@ export async function start(options: { dev: boolean; say: Say; signal: AbortSign
       read.port === 0 && !process.env['PUBLIC_URL'] ? { ...read, publicUrl: web.origin } : read;
     // Most of the code is loaded here, so that a wrong setting or a taken port is told at once.
     const { assemble } = await import('./assemble.ts');
-    web.serve(await assemble(settings, { dataFolder, secrets, dev, say, step, onStop }));
+    web.serve(await assemble(settings, { dataFolder, secrets, web, dev, say, step, onStop }));
     return { settings, stop };
   } catch (error) {
     await stop();

@@ -4,6 +4,7 @@ import { localOrigin } from './config/settings.ts';
 import { StartError } from './config/start-error.ts';
 
 export interface WebServer {
+  server: Server;
   /** Where this machine finds it; with port 0 the one that was free. */
   origin: string;
   /** Until the first handler is given, every request is answered 503. */
@@ -42,6 +43,7 @@ export async function listen(host: string, port: number): Promise<WebServer> {
     server.listen(port, host, resolve);
   });
   return {
+    server,
     origin: localOrigin(host, (server.address() as AddressInfo).port),
     serve: (next) => {
       handler = next;
