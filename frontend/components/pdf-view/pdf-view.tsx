@@ -35,7 +35,15 @@ export function PdfView({ url, label, page, zoom = 1, rotation = 0, onPages }: P
   if (error !== undefined) return <ErrorState error={error} onRetry={retry} />;
   if (failure !== undefined) return <ErrorState error={failure} onRetry={() => setFailure(undefined)} />;
   return (
-    <div ref={frame} className="h-full overflow-auto bg-rule-soft">
+    <div
+      ref={frame}
+      role="region"
+      aria-label={label}
+      // A region that scrolls must be reachable by keyboard (WCAG 2.1.1).
+      // eslint-disable-next-line jsx-a11y/no-noninteractive-tabindex
+      tabIndex={0}
+      className="h-full overflow-auto bg-rule-soft"
+    >
       {!pdf && <Skeleton lines={8} label={`Loading: ${label}`} />}
       <canvas
         ref={canvas}

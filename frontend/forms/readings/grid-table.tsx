@@ -1,11 +1,12 @@
-import type { ClipboardEvent, KeyboardEvent, ReactNode } from 'react';
+import type { ClipboardEvent, FocusEvent, KeyboardEvent, ReactNode } from 'react';
 import type { CompiledField } from '#schemas/instruments/compiled-instrument.ts';
 import { LabelText } from '../../components/field.tsx';
 import { HiddenValue } from '../../components/pen-mark.tsx';
-import { useFieldState, useForm } from '../form-context.ts';
+import { useFieldState, useFieldVersions, useForm } from '../form-context.ts';
+import type { FormStore } from '../form-store.ts';
 import { MissingControl, MissingValue } from '../missing-control.tsx';
-import type { GridShape, Place } from './grid-keys.ts';
-import { ReadingCell, rejectionOf } from './reading-cell.tsx';
+import type { GridShape } from './grid-keys.ts';
+import { ReadingCell } from './reading-cell.tsx';
 import { ReadingSummary } from './reading-summary.tsx';
 
 interface GridTableProps {
@@ -14,34 +15,24 @@ interface GridTableProps {
   shape: GridShape;
   onKeyDown: (event: KeyboardEvent) => void;
   onPaste: (event: ClipboardEvent) => void;
-  onTurnAside: (place: Place) => void;
+  onFocus: (event: FocusEvent) => void;
 }
 
 const head = 'px-1 py-1 text-sm font-medium text-ink-soft';
 
 /** The readings as a real table, one line a field or one line a reading. */
-export function GridTable({ fields, required, shape, onKeyDown, onPaste, onTurnAside }: GridTableProps) {
-  const { store } = useForm();
-  const numbers = Array.from({ length: shape.readings }, (_, reading) => reading);
-  const allHidden = fields.every(({ pointer }) => store.get(pointer).hidden);
-  const isAside = (field: CompiledField, reading: number) =>
-    rejectionOf(store.get, field, reading) !== undefined;
-  const asideButton = (place: Place) =>
-    !allHidden && (
-      <AsideButton
-        label={
-          shape.fields > 1 && shape.readingsAcross ? `${fields[place.field]!.label}, reading` : 'Reading'
-        }
-        reading={place.reading}
-        aside={isAside(fields[place.field]!, place.reading)}
-        onTurn={() => onTurnAside(place)}
-      />
-    );
+export function GridTable({ fields, required, shape, onKeyDown, onPaste, onFocus }: GridTableProps) {
+  const numbers = numbersTo(shape.readings);
   return (
     <div className="overflow-x-auto">
       {/* The keys belong to the inputs inside; the table only listens for all of them. */}
       {/* eslint-disable-next-line jsx-a11y/no-noninteractive-element-interactions */}
-      <table className="border-separate border-spacing-0" onKeyDown={onKeyDown} onPaste={onPaste}>
+      <table
+        className="border-separate border-spacing-0"
+        onKeyDown={onKeyDown}
+        onPaste={onPaste}
+        onFocus={onFocus}
+      >
         <caption className="sr-only">{fields.map(({ label }) => label).join(', ')}: readings</caption>
         {shape.readingsAcross ? (
           <>
@@ -51,7 +42,6 @@ export function GridTable({ fields, required, shape, onKeyDown, onPaste, onTurnA
                 {numbers.map((reading) => (
                   <th key={reading} scope="col" className={head}>
                     {reading + 1}
-                    {shape.fields === 1 && asideButton({ field: 0, reading })}
                   </th>
                 ))}
                 <th scope="col" className={head}>
@@ -62,12 +52,12 @@ export function GridTable({ fields, required, shape, onKeyDown, onPaste, onTurnA
             <tbody>
               {fields.map((field, at) => (
                 <tr key={field.pointer}>
-                  <th scope="row" className="min-w-36 py-1 pr-3 text-left text-sm font-normal">
+                  <th scope="row" className="min-w-32 py-1 pr-3 text-left text-sm font-normal">
                     <FieldHead field={field} required={required.includes(field.pointer)} />
                   </th>
                   <WholeLine field={field} span={shape.readings + 1}>
                     {numbers.map((reading) => (
-                      <ReadingCell key={reading} field={field} fieldIndex={at} reading={reading} />
+                      <ReadingCell key={reading} field={field} fieldIndex={at} reading={reading} narrow />
                     ))}
                     <td className="px-2 text-center">
                       <ReadingSummary field={field} />
@@ -93,7 +83,6 @@ export function GridTable({ fields, required, shape, onKeyDown, onPaste, onTurnA
                     <FieldHead field={field} required={required.includes(field.pointer)} />
                   </th>
                 ))}
-                <td />
               </tr>
             </thead>
             <tbody>
@@ -112,7 +101,6 @@ export function GridTable({ fields, required, shape, onKeyDown, onPaste, onTurnA
                       <ReadingCell field={field} fieldIndex={at} reading={reading} />
                     </ColumnCell>
                   ))}
-                  <td>{asideButton({ field: 0, reading })}</td>
                 </tr>
               ))}
               <tr>
@@ -135,12 +123,15 @@ export function GridTable({ fields, required, shape, onKeyDown, onPaste, onTurnA
 
 function FieldHead({ field, required }: { field: CompiledField; required: boolean }) {
   const { hidden } = useFieldState(field.pointer);
+  const { store } = useForm();
+  useFieldVersions([field.pointer]);
+  const begun = numbersTo(field.readings?.most ?? 0).some((reading) => hasContent(store, field, reading));
   return (
     <span className="group/field flex flex-wrap items-baseline gap-x-2">
       <span>
         <LabelText label={field.label} unit={field.unit} required={required} />
       </span>
-      {!hidden && <MissingControl field={field} required={required} />}
+      {!hidden && !begun && <MissingControl field={field} required={required} />}
     </span>
   );
 }
@@ -186,29 +177,9 @@ function Summary({ field }: { field: CompiledField }) {
   return hidden || missing !== undefined ? null : <ReadingSummary field={field} />;
 }
 
-interface AsideButtonProps {
-  label: string;
-  reading: number;
-  aside: boolean;
-  onTurn: () => void;
-}
+const numbersTo = (count: number) => Array.from({ length: count }, (_, at) => at);
 
-/** The same as `x`, for a finger or with single keys off. */
-function AsideButton({ label, reading, aside, onTurn }: AsideButtonProps) {
-  const { readOnly } = useForm();
-  if (readOnly) return null;
-  const act = aside ? 'counts again' : 'set aside';
-  return (
-    <button
-      type="button"
-      data-print="hide"
-      tabIndex={-1}
-      aria-label={`${label} ${reading + 1}: ${act}`}
-      title={act}
-      className="ml-1 min-h-6 min-w-6 rounded-sm text-xs font-normal text-ink-soft hover:text-venous hover:underline"
-      onClick={onTurn}
-    >
-      {aside ? 'undo' : '×'}
-    </button>
-  );
-}
+const hasContent = (store: FormStore, { pointer }: CompiledField, reading: number): boolean => {
+  const { value, draft } = store.get(`${pointer}/${reading}`);
+  return value !== undefined || (draft ?? '') !== '';
+};

@@ -1,4 +1,5 @@
 import { memo } from 'react';
+import { classNames } from '../../components/class-names.ts';
 import { spokenUnit } from '../../lib/format/units.ts';
 import type { CompiledField } from '#schemas/instruments/compiled-instrument.ts';
 import { rejectionReasonLabel } from '#schemas/vocabulary/rejection-reasons.ts';
@@ -9,10 +10,17 @@ interface ReadingCellProps {
   field: CompiledField;
   fieldIndex: number;
   reading: number;
+  /** Many stand side by side. */
+  narrow?: boolean;
 }
 
 /** One reading. Set aside it stays, struck through, with the reason. */
-export const ReadingCell = memo(function ReadingCell({ field, fieldIndex, reading }: ReadingCellProps) {
+export const ReadingCell = memo(function ReadingCell({
+  field,
+  fieldIndex,
+  reading,
+  narrow = false,
+}: ReadingCellProps) {
   const { store, idPrefix } = useForm();
   const address = `${field.pointer}/${reading}`;
   const { missing } = useFieldState(address);
@@ -21,7 +29,7 @@ export const ReadingCell = memo(function ReadingCell({ field, fieldIndex, readin
   const spoken = field.unit ? `, ${spokenUnit(field.unit)}` : '';
   const state = reason === undefined ? '' : `, set aside: ${rejectionReasonLabel(reason)}`;
   return (
-    <td className="p-1" data-field={fieldIndex} data-reading={reading}>
+    <td className="px-0.5 py-1" data-field={fieldIndex} data-reading={reading}>
       {missing === undefined ? (
         <DraftInput
           id={idPrefix + address}
@@ -29,11 +37,11 @@ export const ReadingCell = memo(function ReadingCell({ field, fieldIndex, readin
           label={`${field.label}, reading ${reading + 1}${spoken}${state}`}
           numeric
           readOnly={reason !== undefined}
-          className={
-            reason === undefined
-              ? 'mx-auto block h-11 w-16! px-1! text-center'
-              : 'mx-auto block h-11 w-16! bg-bone px-1! text-center text-ink-soft line-through'
-          }
+          className={classNames(
+            'mx-auto block h-11 px-1! text-center',
+            narrow ? 'w-13!' : 'w-20!',
+            reason !== undefined && 'bg-bone text-ink-soft line-through',
+          )}
         />
       ) : (
         <span className="text-sm text-ink-soft">not done</span>

@@ -25,6 +25,7 @@ export function ReadingsGrid({
   const [more, setMore] = useState(0);
   const [left, setLeft] = useState<string[]>([]);
   const [aside, setAside] = useState<Place>();
+  const [last, setLast] = useState<Place>();
   useFieldVersions(fields.map(({ pointer }) => pointer));
 
   const most = Math.max(...fields.map(({ readings }) => readings?.most ?? 0));
@@ -93,13 +94,22 @@ export function ReadingsGrid({
         shape={shape}
         onKeyDown={handleKeyDown}
         onPaste={handlePaste}
-        onTurnAside={turnAside}
+        onFocus={(event) => setLast(placeOf(event.target) ?? last)}
       />
       <ReadingProblems fields={fields} readings={readings} left={left} onSeen={() => setLeft([])} />
       {!readOnly && !allHidden && (
-        <div data-print="hide" className="flex flex-wrap items-center gap-x-4 gap-y-2">
-          <GridKeysHint />
+        <div data-print="hide" className="flex flex-wrap items-center gap-x-3 gap-y-2">
+          {last && (
+            <Button {...(shortcutsEnabled() ? { keyHint: 'x' } : {})} onClick={() => turnAside(last)}>
+              {rejectionOf(store.get, fields[last.field]!, last.reading) === undefined
+                ? 'Set aside'
+                : 'Count again'}
+              {': '}
+              {fields.length > 1 && `${fields[last.field]!.label}, `}reading {last.reading + 1}
+            </Button>
+          )}
           {readings < most && <Button onClick={() => setMore(more + 1)}>One more reading</Button>}
+          <GridKeysHint />
         </div>
       )}
       {aside && asideField && (
