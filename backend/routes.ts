@@ -4,6 +4,7 @@ import { declareAccountRoutes } from './modules/accounts/index.ts';
 import { declareAnalysisRoutes } from './modules/analysis/index.ts';
 import { declareCaptureRoutes } from './modules/capture/index.ts';
 import { declareExportRoutes } from './modules/exports/index.ts';
+import { declareInstrumentsRoutes } from './modules/instruments/index.ts';
 import { declareParticipantsRoutes } from './modules/participants/index.ts';
 import { declareMonitoringRoutes } from './modules/monitoring/index.ts';
 import { declareRecordRoutes } from './modules/records/index.ts';
@@ -14,6 +15,7 @@ import { declareStudiesRoutes } from './modules/studies/index.ts';
 export function declareRoutes(table: RouteTable, deps: Deps): void {
   declareAccountRoutes(table, deps);
   declareStudiesRoutes(table, deps);
+  declareInstrumentsRoutes(table, deps);
   declareParticipantsRoutes(table, deps);
   declareCaptureRoutes(table, deps);
   declareSourceRoutes(table, deps);

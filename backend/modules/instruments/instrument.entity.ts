@@ -44,8 +44,8 @@ export const InstrumentVersionSchema = defineEntity({
     samples: json<SampleEntry[]>().columnType('json'),
     /** SHA-256 of the RFC 8785 form of `schema`, hex; also the name under which the validator is served. */
     hash: p.string().length(64).index(),
-    /** The standalone validator module, compiled on publication. */
-    validatorCode: p.text(),
+    /** The standalone validator module, compiled on publication; read only to be served. */
+    validatorCode: p.text().lazy(true, false),
     reason: p.text(),
     authorId: () => p.manyToOne(PersonSchema).mapToPk().fieldName('author_id'),
     publishedAt: p.datetime(),

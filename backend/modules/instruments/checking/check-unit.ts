@@ -1,5 +1,15 @@
-import ucum from '@lhncbc/ucum-lhc';
+import { createRequire } from 'node:module';
 import { units } from '#schemas/vocabulary/units.ts';
+
+interface UnitVerdict {
+  status: 'valid' | 'invalid' | 'error';
+  suggestions?: { units: [code: string, name: string, remark: string][] }[];
+}
+
+// The package is CommonJS without types, and loaders disagree on where its default export is.
+const { UcumLhcUtils } = createRequire(import.meta.url)('@lhncbc/ucum-lhc') as {
+  UcumLhcUtils: { getInstance(): { validateUnitString(code: string, suggest: boolean): UnitVerdict } };
+};
 
 /** What authors write for units that they know by another name. */
 const slips: Record<string, string> = {
@@ -26,7 +36,7 @@ const slips: Record<string, string> = {
  * Stricter than the package in one point: it takes `mL/100mL/min`, where a digit meets a letter.
  */
 export function unitProblem(code: string): string | undefined {
-  const verdict = ucum.UcumLhcUtils.getInstance().validateUnitString(code, true);
+  const verdict = UcumLhcUtils.getInstance().validateUnitString(code, true);
   const digitMeetsLetter = /\d[A-Za-z]/.test(code.replaceAll(/\[[^\]]*\]|\{[^}]*\}/g, ''));
   if (verdict.status === 'valid' && !digitMeetsLetter) return undefined;
   const meant = slips[code.toLowerCase()] ?? shownAs(code) ?? verdict.suggestions?.[0]?.units[0]?.[0];
