@@ -1,7 +1,7 @@
 import type { EntityManager } from '@mikro-orm/postgresql';
 import type { Pool } from 'pg';
 
-export type ProgressState = 'queued' | 'running' | 'done' | 'failed' | 'cancelled';
+type ProgressState = 'queued' | 'running' | 'done' | 'failed' | 'cancelled';
 
 /** How far a job is that a person waits for; `detail` names the stage and carries no data. */
 export interface Progress {

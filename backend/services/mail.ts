@@ -1,6 +1,6 @@
 import { createTransport } from 'nodemailer';
 
-export interface Mail {
+interface Mail {
   /** One plain address. */
   to: string;
   subject: string;

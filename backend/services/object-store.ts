@@ -12,7 +12,7 @@ import { createHash, randomUUID } from 'node:crypto';
 import { Readable } from 'node:stream';
 import type { ObjectStoreSettings } from '../config/settings.ts';
 
-export interface StoredObject {
+interface StoredObject {
   key: string;
   /** Hex SHA-256 of the bytes that went in. */
   sha256: string;

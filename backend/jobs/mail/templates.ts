@@ -11,9 +11,9 @@ export interface MailParams {
 export type MailTemplate = keyof MailParams;
 
 /** Changes to a person's sign-in or rights, which nobody can choose not to hear of (EM-06). */
-export type AccountChange = keyof typeof accountChanges;
+type AccountChange = keyof typeof accountChanges;
 /** What a person is asked to come and do. */
-export type WaitingWork = keyof typeof waitingWork;
+type WaitingWork = keyof typeof waitingWork;
 
 /** What others are told of: that it happened, never to whom, never what was seen. */
 export type StudyEvent = keyof typeof studyEvents;
