@@ -186,6 +186,8 @@ describe('cautions follow the value', () => {
       'sequential_rheological_first',
       { r1: q(37, 'Pa.s'), r2: q(26, 'Pa.s'), eta1: q(3.6, 'mPa.s'), eta2: q(3.1, 'mPa.s') },
     ],
+    ['PLASMA_VISCOSITY_ASSUMED', 'viscosity_quemada_cokelet', { ...hct(0.4), ...at(100) }],
+    ['PROTEIN_ASSUMED', 'viscosity_walburn_schneck', { hct_percent: q(45, '%'), ...at(100) }],
     [
       'HYPERAEMIA_CONFIRMED',
       'fbf_from_percent_slope',

@@ -44,7 +44,12 @@ interface Definition<Taken extends Inputs, Unit extends string> {
   readonly formula: string;
   readonly source: string;
   readonly compute: (values: Values<Taken>, units: Units<Taken>) => Quantity<NoInfer<Unit>>;
-  readonly cautions?: (values: Values<Taken>, result: number) => readonly (CautionCode | false | undefined)[];
+  readonly cautions?: (
+    values: Values<Taken>,
+    result: number,
+    /** Keys of inputs left to their default. */
+    assumed: ReadonlySet<string>,
+  ) => readonly (CautionCode | false | undefined)[];
 }
 
 /** Makes a quantity of its formula, so that inputs in any convertible unit come to it in its own. */
@@ -62,7 +67,7 @@ export function define<Taken extends Inputs, Unit extends string>(
     formula,
     source,
     derive(given) {
-      const { values, units, givenUnits, nameUsed } = readInputs(inputs, given);
+      const { values, units, givenUnits, nameUsed, assumed } = readInputs(inputs, given);
       try {
         const taken = values as Values<Taken>;
         const value: number = definition.compute(taken, units as Units<Taken>);
@@ -72,7 +77,7 @@ export function define<Taken extends Inputs, Unit extends string>(
         return {
           value: convert(value, own, shown),
           unit: shown,
-          cautions: cautions(definition.cautions?.(taken, value) ?? []),
+          cautions: cautions(definition.cautions?.(taken, value, assumed) ?? []),
         };
       } catch (error) {
         throw inWordsOfTheCaller(error, nameUsed);

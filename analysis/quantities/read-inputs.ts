@@ -14,12 +14,14 @@ interface ReadInputs {
   readonly givenUnits: Record<string, string>;
   /** Spelled-out name → the name that the caller used. */
   readonly nameUsed: ReadonlyMap<string, string>;
+  /** Keys of inputs left to their default. */
+  readonly assumed: Set<string>;
 }
 
 /** Matches given inputs, by key or spelled-out name, to those a quantity takes, and brings each to its unit. */
 export function readInputs(inputs: Inputs, given: Readonly<Record<string, GivenInput>>): ReadInputs {
   const nameUsed = namesUsed(inputs, given);
-  const read: ReadInputs = { values: {}, units: {}, givenUnits: {}, nameUsed };
+  const read: ReadInputs = { values: {}, units: {}, givenUnits: {}, nameUsed, assumed: new Set() };
   // Inputs that follow another's unit are read after it.
   const ordered = Object.entries(inputs).sort(
     ([, a], [, b]) => Number(a.rule.kind === 'same') - Number(b.rule.kind === 'same'),
@@ -68,6 +70,7 @@ function readAbsent(read: ReadInputs, key: string, input: Input): void {
       key,
     );
   }
+  if (input.default !== undefined) read.assumed.add(key);
   read.values[key] = input.default;
   read.units[key] = read.givenUnits[key] = input.unit;
 }

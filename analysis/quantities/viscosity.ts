@@ -1,3 +1,4 @@
+import type { CautionCodes } from '../haemorheology/ranges.ts';
 import { linearCombinationDeviation } from '../haemorheology/linear-combination-deviation.ts';
 import {
   bulkLawCautions,
@@ -75,9 +76,10 @@ function plasmaAt37({ plasma_viscosity, plasma_temperature }: PlasmaValues): Qua
     : temperatureCorrectedViscosity(plasma_viscosity, plasma_temperature, quantity(37));
 }
 
-const plasmaCautions = ({ plasma_temperature }: PlasmaValues) => [
-  plasma_temperature === undefined && ('TEMPERATURE_ASSUMED' as const),
-];
+const plasmaCautions = ({ plasma_temperature }: PlasmaValues, assumed: ReadonlySet<string>): CautionCodes =>
+  assumed.has('plasma_viscosity')
+    ? ['PLASMA_VISCOSITY_ASSUMED']
+    : [plasma_temperature === undefined && 'TEMPERATURE_ASSUMED'];
 
 /** Viscosity of blood from haematocrit by the published laws, and what goes with them. */
 export const viscosityQuantities = [
@@ -121,7 +123,8 @@ export const viscosityQuantities = [
       '0.797 * exp(0.0608 * hct_percent) * exp(14.585 * tpma / hct_percent^2) * shear_rate^(-0.00499 * hct_percent)',
     source: 'Walburn & Schneck 1976, Biorheology 13:201 (range from memory)',
     compute: (g) => walburnSchneckViscosity(g.hct_percent, g.shear_rate, g.tpma),
-    cautions: (g) => [
+    cautions: (g, _, assumed) => [
+      assumed.has('tpma') && 'PROTEIN_ASSUMED',
       ...walburnSchneckCautions(g.hct_percent / 100, g.shear_rate),
       ...bulkLawCautions(g.diameter),
     ],
@@ -136,10 +139,10 @@ export const viscosityQuantities = [
       'plasma_viscosity * (1 - k * hct / 2)^-2, k = (k0 + kinf * sqrt(shear_rate/gc)) / (1 + sqrt(shear_rate/gc))',
     source: quemadaSource,
     compute: (g) => quemadaCokeletViscosity(g.hct, g.shear_rate, plasmaAt37(g)),
-    cautions: (g) => [
+    cautions: (g, _, assumed) => [
       ...quemadaCautions(g.hct, g.shear_rate),
       ...bulkLawCautions(g.diameter),
-      ...plasmaCautions(g),
+      ...plasmaCautions(g, assumed),
     ],
   }),
   define({
@@ -151,10 +154,10 @@ export const viscosityQuantities = [
     formula: 'as Quemada, k0 = 0.275363 + 2 / (0.100158 + hct)',
     source: quemadaSource,
     compute: (g) => quemadaDasViscosity(g.hct, g.shear_rate, plasmaAt37(g)),
-    cautions: (g) => [
+    cautions: (g, _, assumed) => [
       ...haematocritCautions(g.hct, 0.1, 0.65),
       ...bulkLawCautions(g.diameter),
-      ...plasmaCautions(g),
+      ...plasmaCautions(g, assumed),
     ],
   }),
   define({
@@ -182,10 +185,10 @@ export const viscosityQuantities = [
         kInfinity: g.k_inf,
         criticalShearRate: g.gamma_c,
       }),
-    cautions: (g) => [
+    cautions: (g, _, assumed) => [
       ...haematocritCautions(g.hct, 0.4, 0.5),
       ...bulkLawCautions(g.diameter),
-      ...plasmaCautions(g),
+      ...plasmaCautions(g, assumed),
     ],
   }),
   define({

@@ -12,7 +12,7 @@ import { quantity } from '../../units/quantity.ts';
 import type { Quantity } from '../../units/quantity.ts';
 
 /** One whole beat, from its foot to the next. Times in s, pressures in mm[Hg]. */
-export interface Beat {
+interface Beat {
   readonly start: number;
   readonly end: number;
   readonly systolic: number;

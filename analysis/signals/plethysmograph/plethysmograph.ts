@@ -14,7 +14,7 @@ import type { Quantity } from '../../units/quantity.ts';
 import { requirePositive, requireWithin } from '../../units/require.ts';
 
 /** A step of the signal that stands for a known volume change, at the gain of the readings. */
-export interface Calibration {
+interface Calibration {
   readonly deflection: number;
   readonly percent: number;
 }
