@@ -40,6 +40,7 @@ export const cautionCodes = {
   BLOCK_VARIATION: ['caution', 'The readings of this block vary by more than 15 %.'],
   CALIBRATION_DRIFT: ['caution', 'The calibrations before and after differ by more than 5 %.'],
   HYPERAEMIA_CONFIRMED: ['info', 'A flow above 100 mL/min/dL was confirmed as hyperaemia.'],
+  FLOW_UNCONFIRMED: ['caution', 'A flow above 100 mL/min/dL counts only when a person confirms hyperaemia.'],
   VENOUS_PRESSURE_NEGLECTED: ['info', 'Venous pressure is neglected by convention.'],
   NOT_SIMULTANEOUS: ['caution', 'Pressure and flow were taken more than 5 minutes apart.'],
   NEGATIVE_GRADIENT: [

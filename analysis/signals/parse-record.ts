@@ -14,7 +14,6 @@ const plainUnits: Readonly<Record<string, string>> = {
   cmH2O: 'cm[H2O]',
   percent: '%',
   pct: '%',
-  au: '1',
 };
 
 /**

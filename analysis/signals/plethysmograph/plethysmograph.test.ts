@@ -141,6 +141,20 @@ describe('plethysmograph readings', () => {
     expect(upsideDown[0]!.flow).toBeCloseTo(calibrated[0]!.flow!, 10);
   });
 
+  it('take no arbitrary units for percent', () => {
+    const arbitrary = { ...volumeTrace(), unit: '1' };
+    expect(() => plethysmographReadings(arbitrary)).toThrow(
+      expect.objectContaining({ code: 'calibration_missing' }) as Error,
+    );
+    expect(plethysmographReadings({ ...volumeTrace(), unit: 'mL/dL' }, { cuff: cuff() })).toHaveLength(4);
+  });
+
+  it('above 100 mL/min/dL wait for a person to confirm hyperaemia', () => {
+    const [high] = plethysmographReadings(volumeTrace({ slope: 1.7 }), { cuff: cuff() });
+    expect(high!.cautions.map(({ code }) => code)).toContain('FLOW_UNCONFIRMED');
+    expect(high!.usable).toBe(false);
+  });
+
   it('are absent from a flat or too slow record', () => {
     expect(() => plethysmographReadings(sampled(60, 100, '%', () => 0))).toThrow(
       expect.objectContaining({ code: 'no_filling_phase' }) as Error,

@@ -8,7 +8,6 @@ import type { FillingPhase } from './filling-phases.ts';
 import { SignalError } from '../signal-error.ts';
 import { samplingStep, segments } from '../signal.ts';
 import type { Segment, Signal } from '../signal.ts';
-import { convert, sameDimension } from '../../units/convert.ts';
 import { quantity } from '../../units/quantity.ts';
 import type { Quantity } from '../../units/quantity.ts';
 import { requirePositive, requireWithin } from '../../units/require.ts';
@@ -43,7 +42,7 @@ export interface SlopeReading {
   /** Absent where the volume does not rise: a bad trace has no flow. */
   readonly flow: Quantity<'mL/min/dL'> | undefined;
   readonly flowStandardError: Quantity<'mL/min/dL'>;
-  /** False where the volume does not rise or two checks of quality fail: unusable until a person has looked. */
+  /** False where the volume does not rise, two checks of quality fail or the flow is above 100: until a person has looked. */
   readonly usable: boolean;
   readonly cautions: readonly Caution[];
 }
@@ -107,6 +106,7 @@ function readingOf(stretch: Segment, phase: FillingPhase, options: WindowOptions
   if (before !== undefined && Math.abs(before) > 0.1 * Math.abs(line.slope)) fails.push('BASELINE_DRIFT');
   if (options.clipped) fails.push('CLIPPED_SIGNAL');
   const rises = line.slope > 0;
+  const tooHigh = 60 * line.slope > 100;
   const start = stretch.start + (first + from) * stretch.step;
   return {
     phase,
@@ -116,8 +116,8 @@ function readingOf(stretch: Segment, phase: FillingPhase, options: WindowOptions
     rSquared: line.rSquared,
     flow: rises ? quantity(60 * line.slope) : undefined,
     flowStandardError: quantity(60 * (line.standardError ?? 0)),
-    usable: rises && fails.length < 2,
-    cautions: cautions([...fails, period === undefined && 'FIXED_WINDOW']),
+    usable: rises && fails.length < 2 && !tooHigh,
+    cautions: cautions([...fails, period === undefined && 'FIXED_WINDOW', tooHigh && 'FLOW_UNCONFIRMED']),
   };
 }
 
@@ -155,10 +155,8 @@ function driftBefore(stretch: Segment, onset: number, period: number | undefined
 }
 
 function inPercent({ times, values, unit }: Signal, calibration: Calibration | undefined): Signal {
-  if (sameDimension(unit, '%') && calibration === undefined) {
-    const factor: number = convert(1, unit, '%');
-    return { times, unit: '%', values: values.map((value) => value * factor) };
-  }
+  // Other dimensionless units may be arbitrary ones, which mean nothing without a calibration.
+  if ((unit === '%' || unit === 'mL/dL') && calibration === undefined) return { times, values, unit: '%' };
   if (calibration === undefined) {
     throw new SignalError(
       'calibration_missing',
