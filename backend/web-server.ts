@@ -27,15 +27,12 @@ const starting: RequestListener = (_request, response) => {
  */
 export async function listen(host: string, port: number): Promise<WebServer> {
   let handler = starting;
-  let closing = false;
   const eventStreams = new Set<ServerResponse>();
   const server = createServer((request, response) => {
     if (request.headers.accept?.includes('text/event-stream')) {
       eventStreams.add(response);
       response.once('close', () => eventStreams.delete(response));
     }
-    // A kept-alive connection would otherwise outlive the close by its idle time.
-    if (closing) response.setHeader('Connection', 'close');
     handler(request, response);
   });
   await new Promise<void>((resolve, reject) => {
@@ -48,14 +45,12 @@ export async function listen(host: string, port: number): Promise<WebServer> {
     serve: (next) => {
       handler = next;
     },
-    close: () => {
-      closing = true;
-      return closeSoon(server, eventStreams);
-    },
+    close: () => closeSoon(server, eventStreams),
   };
 }
 
 function closeSoon(server: Server, eventStreams: Set<ServerResponse>): Promise<void> {
+  // A kept-alive connection that becomes idle after the close would hold it open for seconds.
   const idle = setInterval(() => server.closeIdleConnections(), 100);
   const last = setTimeout(() => server.closeAllConnections(), graceMilliseconds);
   for (const response of eventStreams) response.end(); // they have no end of their own
