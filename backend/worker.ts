@@ -20,7 +20,7 @@ export async function startWorker(
   timing?: Partial<QueueTiming>,
 ): Promise<Queue> {
   const queue = await startQueue(appUrl, {
-    onError: (error, name) => logger.error({ error: stackOf(error), queue: name }, 'a job failed'),
+    onError: (error, name) => logger.error({ error: stackOf(error), queue: name }, name ? 'a job failed' : 'the queue met an error'),
     timing,
   });
   const fork = () => orm.em.fork();
