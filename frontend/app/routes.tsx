@@ -15,6 +15,21 @@ const page = (path: string, load: () => Promise<LoadedPage>): RouteObject => ({ 
 /** The pages of a study, below `/studies/:studyCode/`: one line a page, each a file in `frontend/pages`. */
 export const studyPages: RouteObject[] = [
   page('now', async () => ({ Component: (await import('#frontend/pages/now-page.tsx')).NowPage })),
+  page('participants', async () => ({
+    Component: (await import('#frontend/pages/participants-page.tsx')).ParticipantsPage,
+  })),
+  page('participants/enrolment', async () => ({
+    Component: (await import('#frontend/pages/participant-enrolment-page.tsx')).ParticipantEnrolmentPage,
+  })),
+  page('participants/:code', async () => ({
+    Component: (await import('#frontend/pages/participant-page.tsx')).ParticipantPage,
+  })),
+  page('allocation', async () => ({
+    Component: (await import('#frontend/pages/allocation-page.tsx')).AllocationPage,
+  })),
+  page('unblinding', async () => ({
+    Component: (await import('#frontend/pages/unblinding-page.tsx')).UnblindingPage,
+  })),
 ];
 
 /** The administrator's pages, below `/administration/`. */

@@ -15,6 +15,7 @@ export const studyTabs: readonly Tab[] = [
   { label: 'Now', path: 'now', ability: null, key: 'n' },
   { label: 'Visit ribbon', path: 'ribbon', ability: ['read', 'Visit'], key: 'r' },
   { label: 'Participants', path: 'participants', ability: ['read', 'Participant'], key: 'p' },
+  { label: 'Allocation', path: 'allocation', ability: ['read', 'AllocationList'], key: 't' },
   { label: 'Visits', path: 'visits', ability: ['read', 'Visit'], key: 'v' },
   { label: 'Verification desk', path: 'verification', ability: ['verify', 'Entry'], key: 'd' },
   { label: 'Queries', path: 'queries', ability: ['read', 'Query'], key: 'q' },

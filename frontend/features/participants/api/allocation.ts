@@ -19,7 +19,8 @@ const keys = {
 export const allocationQuery = (studyCode: string) =>
   queryOptions({
     queryKey: keys.overview(studyCode),
-    queryFn: async ({ signal }) => (await api<AllocationDto>(`/studies/${studyCode}/allocation`, { signal })).data,
+    queryFn: async ({ signal }) =>
+      (await api<AllocationDto>(`/studies/${studyCode}/allocation`, { signal })).data,
   });
 
 export const worklistQuery = (studyCode: string) =>
@@ -46,7 +47,8 @@ export const openedQuery = (studyCode: string) =>
 export const unblindingQuery = (studyCode: string) =>
   queryOptions({
     queryKey: keys.unblinding(studyCode),
-    queryFn: async ({ signal }) => (await api<UnblindingDto>(`/studies/${studyCode}/unblinding`, { signal })).data,
+    queryFn: async ({ signal }) =>
+      (await api<UnblindingDto>(`/studies/${studyCode}/unblinding`, { signal })).data,
   });
 
 /** Sealing the list, and the two hands of an unblinding. */

@@ -25,13 +25,15 @@ interface Page<Item> {
 
 const keys = {
   all: (studyCode: string) => ['participants', studyCode] as const,
-  list: (studyCode: string, filters: ParticipantFilters) => [...keys.all(studyCode), 'list', filters] as const,
+  list: (studyCode: string, filters: ParticipantFilters) =>
+    [...keys.all(studyCode), 'list', filters] as const,
   one: (studyCode: string, code: string) => [...keys.all(studyCode), 'one', code] as const,
   readings: (studyCode: string, id: string) => [...keys.all(studyCode), 'readings', id] as const,
   visits: (studyCode: string, id: string) => [...keys.all(studyCode), 'visits', id] as const,
 };
 
-const pathOf = (studyCode: string, id = '') => `/studies/${studyCode}/participants${id === '' ? '' : `/${id}`}`;
+const pathOf = (studyCode: string, id = '') =>
+  `/studies/${studyCode}/participants${id === '' ? '' : `/${id}`}`;
 
 export const participantsQuery = (studyCode: string, filters: ParticipantFilters) =>
   infiniteQueryOptions({
@@ -51,14 +53,16 @@ export const participantQuery = (studyCode: string, code: string) =>
   queryOptions({
     queryKey: keys.one(studyCode, code),
     queryFn: async ({ signal }) =>
-      (await api<ParticipantDto>(`${pathOf(studyCode)}/by-code/${encodeURIComponent(code)}`, { signal })).data,
+      (await api<ParticipantDto>(`${pathOf(studyCode)}/by-code/${encodeURIComponent(code)}`, { signal }))
+        .data,
   });
 
 export const readingsQuery = (studyCode: string, id: string) =>
   queryOptions({
     queryKey: keys.readings(studyCode, id),
     queryFn: async ({ signal }) =>
-      (await api<Page<IdentifiersReadingDto>>(`${pathOf(studyCode, id)}/identifiers/readings`, { signal })).data,
+      (await api<Page<IdentifiersReadingDto>>(`${pathOf(studyCode, id)}/identifiers/readings`, { signal }))
+        .data,
   });
 
 export const visitsQuery = (studyCode: string, id: string) =>

@@ -11,12 +11,12 @@ export function AssignPlaceDialog({ studyCode, participant, onClose, onDone }: P
       consequences={
         <>
           <p>
-            {participant.code} takes the next place of the sealed list at site {participant.siteCode}. This is for
-            good: a place is never given back, and the criteria are not changed any more.
+            {participant.code} takes the next place of the sealed list at site {participant.siteCode}. This is
+            for good: a place is never given back, and the criteria are not changed any more.
           </p>
           <p>
-            Only the unblinded technician sees what is to be given. You will see that a place was assigned, and
-            nothing else.
+            Only the unblinded technician sees what is to be given. You will see that a place was assigned,
+            and nothing else.
           </p>
         </>
       }

@@ -31,7 +31,9 @@ export function ConfirmCriteriaDialog({ studyCode, participant, onClose, onDone 
   return (
     <ActDialog
       title={`Criteria for ${participant.code}`}
-      consequences={<p>Once confirmed, this participant can be given a place. After that it is not changed any more.</p>}
+      consequences={
+        <p>Once confirmed, this participant can be given a place. After that it is not changed any more.</p>
+      }
       act="Confirm the criteria"
       reasons={false}
       onAct={handleAct}

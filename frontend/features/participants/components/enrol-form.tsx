@@ -39,7 +39,12 @@ export function EnrolForm({ onEnrolled }: { onEnrolled: (participant: Participan
   };
 
   return (
-    <form onSubmit={(event) => void handleSubmit(event)} noValidate autoComplete="off" className="flex flex-col gap-5">
+    <form
+      onSubmit={(event) => void handleSubmit(event)}
+      noValidate
+      autoComplete="off"
+      className="flex flex-col gap-5"
+    >
       {error !== undefined && <ErrorSummary error={error} />}
       <SelectField
         label="Site"
@@ -72,5 +77,7 @@ function keyFor(last: { text: string; key: string }, body: EnrolParticipantBody)
 }
 
 function refusalAt(error: unknown, pointer: string): string | undefined {
-  return error instanceof ApiProblem ? error.errors.find((problem) => problem.pointer === pointer)?.detail : undefined;
+  return error instanceof ApiProblem
+    ? error.errors.find((problem) => problem.pointer === pointer)?.detail
+    : undefined;
 }

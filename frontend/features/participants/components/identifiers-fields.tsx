@@ -9,11 +9,21 @@ interface IdentifiersFieldsProps {
 
 const fields = [
   { field: 'name', label: 'Full name', required: true },
-  { field: 'birthDate', label: 'Birth date', required: true, help: 'Year, month, day: 1980-02-29', inputMode: 'numeric' },
+  {
+    field: 'birthDate',
+    label: 'Birth date',
+    required: true,
+    help: 'Year, month, day: 1980-02-29',
+    inputMode: 'numeric',
+  },
   { field: 'phone', label: 'Phone', type: 'tel' },
   { field: 'email', label: 'E-mail', type: 'email' },
   { field: 'postcode', label: 'Postcode' },
-  { field: 'recordNumber', label: 'Record number', help: 'The number of the patient record, where there is one' },
+  {
+    field: 'recordNumber',
+    label: 'Record number',
+    help: 'The number of the patient record, where there is one',
+  },
 ] as const;
 
 /** The fields of direct identifiers. The browser is asked not to remember them (WS-13). */

@@ -22,7 +22,14 @@ export function ParticipantFilters({ site, state, code, set }: ReturnType<typeof
         spellCheck={false}
         className="w-40"
         value={code}
-        onChange={(event) => set.code(event.target.value.toUpperCase().replaceAll(/[^A-Z0-9-]/g, '').slice(0, 12))}
+        onChange={(event) =>
+          set.code(
+            event.target.value
+              .toUpperCase()
+              .replaceAll(/[^A-Z0-9-]/g, '')
+              .slice(0, 12),
+          )
+        }
       />
       <SelectField
         label="State"
@@ -37,7 +44,10 @@ export function ParticipantFilters({ site, state, code, set }: ReturnType<typeof
           label="Site"
           className="w-52"
           placeholder="all sites"
-          choices={sites.map(({ id, code: siteCode, name }) => ({ value: id, label: `${siteCode} · ${name}` }))}
+          choices={sites.map(({ id, code: siteCode, name }) => ({
+            value: id,
+            label: `${siteCode} · ${name}`,
+          }))}
           value={site}
           onChange={(event) => set.site(event.target.value)}
         />

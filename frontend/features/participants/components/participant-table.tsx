@@ -11,7 +11,7 @@ const columns = (studyCode: string): Column<ParticipantDto>[] => [
   {
     header: 'Code',
     cell: ({ code }) => (
-      <Link to={`/studies/${studyCode}/participants/${code}`} className="link font-mono">
+      <Link to={`/studies/${studyCode}/participants/${code}`} className="font-mono link">
         {code}
       </Link>
     ),
@@ -57,7 +57,10 @@ export function ParticipantTable({ studyCode, filters }: { studyCode: string; fi
         empty={
           filtered
             ? { title: 'No participant fits these filters', children: <p>Widen them, or clear the code.</p> }
-            : { title: 'Nobody is enrolled yet', children: <p>A coordinator enrols the first participant.</p> }
+            : {
+                title: 'Nobody is enrolled yet',
+                children: <p>A coordinator enrols the first participant.</p>,
+              }
         }
       />
       {query.hasNextPage && (

@@ -36,8 +36,8 @@ export function WithdrawDialog({ studyCode, participant, onClose, onDone }: Part
       title={`Withdrawal of ${participant.code}`}
       consequences={
         <p>
-          Collection stops at once: no visit is begun and no entry opened any more. What is on record stays on record;
-          cuts made before today do not change. A withdrawal is not taken back.
+          Collection stops at once: no visit is begun and no entry opened any more. What is on record stays on
+          record; cuts made before today do not change. A withdrawal is not taken back.
         </p>
       }
       act="Record the withdrawal"

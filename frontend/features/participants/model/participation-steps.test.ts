@@ -9,7 +9,12 @@ const screening = {
   allocation: null,
   visits: { completed: 0, missed: 0, planned: 0 },
 } as const;
-const consented = { ...screening, state: 'consented', consentedOn: '2026-03-14', consentVersion: '1.2' } as const;
+const consented = {
+  ...screening,
+  state: 'consented',
+  consentedOn: '2026-03-14',
+  consentVersion: '1.2',
+} as const;
 const eligible = { ...consented, eligibleOn: '2026-03-15' } as const;
 const assignedAt = '2026-03-15T09:00:00.000Z';
 const allocated = { ...eligible, state: 'allocated', allocation: { assignedAt, hidden: true } } as const;
@@ -39,14 +44,22 @@ describe('the steps of taking part', () => {
   });
 
   it('have no place to give where everybody gets the same', () => {
-    expect(participationSteps(eligible, false).map(({ key }) => key)).toEqual(['consent', 'criteria', 'visits']);
+    expect(participationSteps(eligible, false).map(({ key }) => key)).toEqual([
+      'consent',
+      'criteria',
+      'visits',
+    ]);
     expect(opened(eligible, false)).toEqual([]);
   });
 
   // proves RB-07
   it('show a place in the same step whether its condition may be known or not', () => {
     const [, , hidden] = participationSteps(allocated, true);
-    expect(hidden).toMatchObject({ key: 'place', mark: 'hidden', detail: 'assigned · hidden until unblinding' });
+    expect(hidden).toMatchObject({
+      key: 'place',
+      mark: 'hidden',
+      detail: 'assigned · hidden until unblinding',
+    });
     const known = {
       assignedAt,
       hidden: false as const,
@@ -66,7 +79,9 @@ describe('the steps of taking part', () => {
       word: 'under way',
       detail: '2 of 4 completed, 1 missed',
     });
-    expect(participationSteps({ ...allocated, visits: { completed: 3, missed: 1, planned: 4 } }, true).at(-1)).toMatchObject({ word: 'done' });
+    expect(
+      participationSteps({ ...allocated, visits: { completed: 3, missed: 1, planned: 4 } }, true).at(-1),
+    ).toMatchObject({ word: 'done' });
   });
 
   // proves CP-03

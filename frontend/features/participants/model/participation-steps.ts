@@ -30,7 +30,12 @@ export function participationSteps(participant: Facts, allocated: boolean): Part
   return over ? steps.map((step) => (step.mark === 'settled' ? step : { ...step, ...stopped })) : steps;
 }
 
-const stopped = { mark: 'late', word: 'stopped', detail: 'The participant has withdrawn.', open: false } as const;
+const stopped = {
+  mark: 'late',
+  word: 'stopped',
+  detail: 'The participant has withdrawn.',
+  open: false,
+} as const;
 
 function consent({ consentedOn, consentVersion }: Facts): ParticipationStep {
   const title = 'Consent';
@@ -59,7 +64,14 @@ function place({ state, eligibleOn, allocation }: Facts): ParticipationStep {
     const detail = allocation.hidden
       ? 'assigned · hidden until unblinding'
       : `${allocation.sequence.label}: ${allocation.periods.map(({ condition }) => condition.label).join(', then ')}`;
-    return { key: 'place', title, mark: allocation.hidden ? 'hidden' : 'settled', word: 'assigned', detail, open: false };
+    return {
+      key: 'place',
+      title,
+      mark: allocation.hidden ? 'hidden' : 'settled',
+      word: 'assigned',
+      detail,
+      open: false,
+    };
   }
   const open = state === 'consented' && eligibleOn !== null;
   const detail = open ? 'The next place at this site, for good.' : 'Given after consent and criteria.';
