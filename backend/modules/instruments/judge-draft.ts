@@ -3,8 +3,7 @@ import type { TextProblemDto, VerdictDto } from '#schemas/api/instruments.ts';
 import type { InstrumentProblem, InstrumentSchema, SampleEntry } from '#schemas/instruments/instrument.ts';
 import { jsonPlaces, lineAndColumn, placeOf, type JsonPlaces, type Span } from '#schemas/json/json-places.ts';
 import { canonicalHash } from '#backend/database/trail/canonical.ts';
-import { checkInstrument } from './checking/check-instrument.ts';
-import { instrumentLibrary } from './checking/instrument-library.ts';
+import { checkDraft } from './checking/checking.pool.ts';
 import { compareInstruments, unitProblems } from './compare-instruments.ts';
 import { InstrumentVersionSchema, type InstrumentVersion } from './instrument.entity.ts';
 
@@ -35,7 +34,7 @@ export async function judgeDraft(em: EntityManager, draft: JudgedDraft): Promise
     );
     return { ...judgement, problems };
   }
-  const verdict = checkInstrument(text, samples, instrumentLibrary, await takenIds(em, studyId));
+  const verdict = await checkDraft(text, samples, { takenIds: await takenIds(em, studyId) });
   const own =
     verdict.problems.length === 0 ? ownProblems(JSON.parse(text) as InstrumentSchema, key, published) : [];
   const problems = [

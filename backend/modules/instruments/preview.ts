@@ -1,6 +1,6 @@
 import type { EntityManager } from '@mikro-orm/postgresql';
 import type { InstrumentSchema } from '#schemas/instruments/instrument.ts';
-import { validatorCode } from './checking/validator-code.ts';
+import { makeValidatorCode } from './checking/checking.pool.ts';
 import { InstrumentPreviewSchema, InstrumentVersionSchema } from './instrument.entity.ts';
 
 /** Makes the validator of a checked draft fetchable by its hash; another process may be asked for it. */
@@ -17,7 +17,7 @@ export async function keepPreview(
   await em.execute(
     `insert into instrument_preview (study_id, hash, validator_code, made_at) values (?, ?, ?, now())
      on conflict do nothing`,
-    [studyId, hash, validatorCode(schema)],
+    [studyId, hash, await makeValidatorCode(schema)],
   );
 }
 

@@ -5,7 +5,7 @@ import { authorize } from '#backend/http/authorize.ts';
 import { assertRevision } from '#backend/http/preconditions.ts';
 import { Problem, stateForbids, type FieldProblem } from '#backend/http/problem.ts';
 import { assertStudyOpen } from '../studies/index.ts';
-import { validatorCode } from './checking/validator-code.ts';
+import { makeValidatorCode } from './checking/checking.pool.ts';
 import { draftText } from './draft-text.ts';
 import { readDraft } from './draft.service.ts';
 import {
@@ -40,7 +40,7 @@ export async function publishDraft(
   ) {
     throw stateForbids(`Nothing differs from version ${newest.version}; there is nothing to publish.`);
   }
-  const code = validatorCode(schema);
+  const validatorCode = await makeValidatorCode(schema);
   const kind = { kind: 'instrument-published', reason, subject: aboutVersion };
   return act(em, kind, async (tx) => {
     await assertStudyOpen(tx);
@@ -57,7 +57,7 @@ export async function publishDraft(
       schema,
       samples: seen.samples,
       hash,
-      validatorCode: code,
+      validatorCode,
       reason,
       authorId: currentPersonId(),
       publishedAt: new Date(),
