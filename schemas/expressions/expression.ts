@@ -21,7 +21,7 @@ export interface Expression {
   evaluate(scope: ExpressionScope): ExpressionResult;
 }
 
-export type ExpressionResult = { value: number | string | boolean } | { problem: string };
+type ExpressionResult = { value: number | string | boolean } | { problem: string };
 
 /** Compiles expressions over one set of names. */
 export interface ExpressionCompiler {

@@ -316,6 +316,29 @@ describe('an instrument is refused, with the place, when', () => {
       'can count',
     ],
     [
+      'a condition names no field',
+      instrument({ a: number() }, { if: { required: ['a'] }, then: { required: ['b'] } }),
+      '',
+      'names /b',
+    ],
+    [
+      'a definition holds itself',
+      instrument(
+        { a: { $ref: '#/$defs/node' } },
+        {
+          $defs: {
+            node: {
+              type: 'object',
+              additionalProperties: false,
+              properties: { a: { $ref: '#/$defs/node' } },
+            },
+          },
+        },
+      ),
+      '/$defs/node/properties/a/$ref',
+      'refers to itself',
+    ],
+    [
       'readings taken together are counted by two rules',
       instrument({ a: rule({ together: 'cuff' }), b: rule({ together: 'cuff', discardFirst: 0 }) }),
       '/properties/b/readings',

@@ -3,6 +3,7 @@ import type { ExpressionType, ExpressionVariables } from '../expressions/express
 import { nearestWord } from '../expressions/nearest-word.ts';
 import { cautionTexts } from '../vocabulary/caution-texts.ts';
 import type { Level } from '../vocabulary/states.ts';
+import { referenceProblem } from './bounds.ts';
 import { compileChecks } from './compile-checks.ts';
 import { compileDerivations } from './compile-derivations.ts';
 import { compileField } from './compile-field.ts';
@@ -22,6 +23,8 @@ export function compileInstrument(
   schema: InstrumentSchema,
   library: QuantityLibrary,
 ): CompiledInstrument | { problems: InstrumentProblem[] } {
+  const references = referenceProblem(schema);
+  if (references) return { problems: [references] };
   const found = expandFields(schema);
   const { fields, problems } = compileFields(found, schema);
   problems.push(...structureProblems(schema, found, fields));
@@ -124,6 +127,10 @@ function structureProblems(
     });
   }
   for (const group of found.groups) {
+    if (group.pointer.split('/').length > instrumentLimits.groupLevels + 1) {
+      const message = `Groups lie at most ${instrumentLimits.groupLevels} deep in one another`;
+      problems.push({ pointer: group.schemaPointer, message });
+    }
     if (group.schema.additionalProperties !== false && group.schema.unevaluatedProperties !== false) {
       problems.push({
         pointer: group.schemaPointer,
@@ -137,7 +144,12 @@ function structureProblems(
       });
     }
   }
-  problems.push(...unknownRequired(schema, found), ...unknownCautions(schema), ...unequalPartners(fields));
+  problems.push(
+    ...unknownRequired(schema, found),
+    ...unknownInConditions(found),
+    ...unknownCautions(schema),
+    ...unequalPartners(fields),
+  );
   return problems;
 }
 
@@ -155,6 +167,17 @@ function unknownRequired(schema: InstrumentSchema, found: FoundFields): Instrume
       return [{ pointer: `${object.schemaPointer}/required/${index}`, message }];
     }),
   );
+}
+
+/** A condition on a field that is not there can never hold, or can never be met. */
+function unknownInConditions({ fields, groups, decidedBy }: FoundFields): InstrumentProblem[] {
+  const known = new Set([...fields, ...groups].map(({ pointer }) => pointer));
+  const named = new Set([...decidedBy].flatMap(([pointer, causes]) => [pointer, ...causes]));
+  return [...named]
+    .filter((pointer) => !known.has(pointer))
+    .map((pointer) => {
+      return { pointer: '', message: `A condition names ${pointer}, which is no field` };
+    });
 }
 
 function unknownCautions(schema: InstrumentSchema): InstrumentProblem[] {

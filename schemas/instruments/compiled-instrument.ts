@@ -71,7 +71,7 @@ export interface CompiledDerivation {
 }
 
 /** How a derived value is computed. */
-export type DerivationRule =
+type DerivationRule =
   | { kind: 'expression'; expression: Expression }
   | { kind: 'quantity'; quantity: string; version: string; inputs: Record<string, QuantityInput> };
 

@@ -28,7 +28,10 @@ interface Place {
   conditional: boolean;
 }
 
-/** Lists the fields of an instrument in reading order, through groups, references and conditions. */
+/**
+ * Lists the fields of an instrument in reading order, through groups, references and conditions.
+ * References must lead somewhere and not go in a circle: `referenceProblem` refuses those before.
+ */
 export function expandFields(instrument: InstrumentSchema): FoundFields {
   const fields = new Map<string, FoundField>();
   const groups = new Map<string, FoundField>();
@@ -104,17 +107,12 @@ export function expandFields(instrument: InstrumentSchema): FoundFields {
   return { fields: [...fields.values()], groups: [...groups.values()], decidedBy };
 }
 
-/** Follows `#/$defs/name`; what stands beside the reference wins. A reference to nothing, or in a circle, is left. */
-export function resolveReference(
-  schema: FieldSchema,
-  instrument: InstrumentSchema,
-  seen: string[] = [],
-): FieldSchema {
-  if (schema.$ref === undefined || seen.includes(schema.$ref)) return schema;
-  const target = instrument.$defs?.[schema.$ref.replace('#/$defs/', '')];
-  if (!target) return schema;
-  const { $ref, ...beside } = schema;
-  return { ...resolveReference(target, instrument, [...seen, $ref]), ...beside };
+/** Follows `#/$defs/name`; what stands beside the reference wins. */
+function resolveReference(schema: FieldSchema, instrument: InstrumentSchema): FieldSchema {
+  if (schema.$ref === undefined) return schema;
+  const target = instrument.$defs?.[schema.$ref.replace('#/$defs/', '')] ?? {};
+  const { $ref: _, ...beside } = schema;
+  return { ...resolveReference(target, instrument), ...beside };
 }
 
 /** The fields that a condition names, by value or as required, at any depth. */

@@ -98,7 +98,7 @@ export interface ReadingsRule {
 }
 
 /** A CEL expression, or a quantity of the analysis library with where its inputs come from. */
-export type Derivation = string | { quantity: string; inputs: Record<string, QuantityInput> };
+type Derivation = string | { quantity: string; inputs: Record<string, QuantityInput> };
 
 /** The address of a field, or a constant with its unit. */
 export type QuantityInput = string | { value: number; unit: string };

@@ -9,6 +9,8 @@ export const instrumentLimits = {
   /** Schema nodes with each reference followed: a short text can unfold without end. */
   expandedNodes: 20_000,
   fields: 200,
+  /** Groups of fields inside each other. */
+  groupLevels: 3,
   checks: 200,
   readings: 60,
   patternCharacters: 300,

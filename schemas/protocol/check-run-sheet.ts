@@ -20,7 +20,7 @@ export function stepProblems(
 }
 
 /** A hold point over an unblinding value answers open or shut only, and is asked by the unblinded technician. */
-export function holdPointLevel(step: RunSheetStep, place: Place): Level {
+function holdPointLevel(step: RunSheetStep, place: Place): Level {
   if (step.holdPoint?.kind !== 'expression') return 'open';
   const fields = Object.values(step.holdPoint.inputs).map((reference) => referencedField(reference, place));
   return fields.some((found) => 'field' in found && found.field.level === 'unblinding')
@@ -102,6 +102,11 @@ function holdPointProblems(
         message: `${found.field.label} is no number`,
       });
     } else variables[name] = found.field.readings ? 'list<double>' : 'double';
+  }
+  if (step.performedBy === 'coordinator' && holdPointLevel(step, place) === 'unblinding') {
+    const message =
+      'It reads a value that unblinds: the step belongs to the unblinded technician, who is told open or shut';
+    problems.push({ pointer: `${pointer}/holdPoint`, message });
   }
   if (problems.length > 0) return problems;
   const expression = expressionCompiler(variables).compile(holdPoint.expression, 'bool');

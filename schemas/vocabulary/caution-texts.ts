@@ -49,5 +49,3 @@ export const cautionTexts = {
     text: 'These values can reveal the allocated condition. Do not speak of them, show them or leave them in view of blinded staff or the participant.',
   },
 } as const satisfies Record<string, { title: string; text: string }>;
-
-export type CautionTextCode = keyof typeof cautionTexts;

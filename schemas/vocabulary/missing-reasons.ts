@@ -7,6 +7,7 @@ export const missingReasons = [
   { code: 'out-of-time', label: 'No time left in the visit' },
   { code: 'sample-unusable', label: 'Sample lost or unusable' },
   { code: 'reading-unusable', label: 'No usable reading' },
+  { code: 'not-applicable', label: 'Not applicable' },
   { code: 'unknown', label: 'Unknown' },
 ] as const;
 

@@ -46,8 +46,6 @@ export const units = [
   { code: '[g]', shown: 'g', name: 'acceleration, multiples of gravity' },
 ] as const satisfies readonly { code: string; shown: string; factor?: number; name: string }[];
 
-export type UnitCode = (typeof units)[number]['code'];
-
 /** What a person reads beside a stored number: the unit's printed form and the factor to show the value in it. */
 export function shownUnit(code: string): { shown: string; factor: number } {
   const unit: { code: string; shown: string; factor?: number } | undefined = units.find(

@@ -1,8 +1,8 @@
+import { boundsProblem, referenceProblem } from '#schemas/instruments/bounds.ts';
 import { compileInstrument } from '#schemas/instruments/compile-instrument.ts';
 import type { InstrumentProblem, InstrumentSchema, SampleEntry } from '#schemas/instruments/instrument.ts';
 import { instrumentLimits } from '#schemas/instruments/limits.ts';
 import type { QuantityLibrary } from '#schemas/instruments/quantity-library.ts';
-import { boundsProblem, referenceProblem } from './bounds.ts';
 import { contentProblems } from './check-content.ts';
 import { keywordProblems } from './check-keywords.ts';
 import { evaluateEntry } from './evaluate-entry.ts';

@@ -110,6 +110,19 @@ describe('a protocol has a problem, at its place, when', () => {
       'true or false',
     ],
     [
+      'a blinded coordinator would ask about a value that unblinds',
+      withStep('pressures-before', {
+        holdPoint: {
+          kind: 'expression',
+          label: 'x',
+          expression: 'a > 0.4',
+          inputs: { a: { step: 'sample-before', pointer: '/haematocrit' } },
+        },
+      }),
+      '/visitTypes/1/runSheet/5/holdPoint',
+      'belongs to the unblinded technician',
+    ],
+    [
       'a measure is taken in another unit',
       withFirst({
         measures: [

@@ -13,7 +13,7 @@ const usualLimit = 10_000;
 const threads = 2;
 
 /** What an author wrote took longer than the limit, and was ended. */
-export class TooSlow extends Error {}
+class TooSlow extends Error {}
 
 let pool: Piscina<CheckingTask, CheckingAnswer> | undefined;
 

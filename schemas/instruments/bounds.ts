@@ -1,5 +1,5 @@
-import type { InstrumentProblem, InstrumentSchema } from '#schemas/instruments/instrument.ts';
-import { instrumentLimits } from '#schemas/instruments/limits.ts';
+import type { InstrumentProblem, InstrumentSchema } from './instrument.ts';
+import { instrumentLimits } from './limits.ts';
 
 /**
  * Refuses what is too large or too deep before anything recursive sees it (WS-10).
