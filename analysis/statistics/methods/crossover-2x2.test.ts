@@ -167,11 +167,11 @@ describe('2 × 2 cross-over, bad input', () => {
   const withSequence = { ...plan, sequence: 'sequence' };
 
   it('accepts one label an order, whatever it is called', () => {
-    const result = analyse(
-      withSequence,
-      csvOf(four, (order) => (order === 'AB' ? 'first' : 'second')),
-    );
+    const label = (order: string) => (order === 'AB' ? 'first' : 'second');
+    const onlySecondPeriod = 's5,first,2,B,1,8';
+    const result = analyse(withSequence, `${csvOf(four, label)}\n${onlySecondPeriod}`);
     expect(result.n).toBe(4);
+    expect(result.estimates['mixed_n_subjects']).toBe(5);
   });
 
   it('refuses two labels of a subject, and labels that contradict the order', () => {

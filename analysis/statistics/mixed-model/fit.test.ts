@@ -126,18 +126,22 @@ describe('the optimum', () => {
     });
   }
 
-  it('is no worse than any point of a wide search, also at the boundary', () => {
-    for (let seed = 10; seed < 30; seed += 1) {
-      const model = irregular(seed, { subjects: 4, between: 0.1 });
-      const fit = fitMixedModel(model);
-      for (const v11 of [0, 0.01, 0.1, 1]) {
-        for (const v22 of [0, 0.01, 0.1, 1]) {
-          for (const r of [-0.99, 0, 0.99]) {
-            for (const residual of [0.7, 1, 1.4].map((factor) => factor * fit.residualVariance)) {
-              const theta = { residual, v11, v21: r * Math.sqrt(v11 * v22), v22 };
-              expect(-0.5 * denseDeviance(model, theta)).toBeLessThanOrEqual(fit.logLikelihood + 1e-9);
-            }
-          }
+  it('is no worse than any point of a wide search, also at a boundary and where there are two optima', () => {
+    const models = [
+      ...Array.from({ length: 20 }, (_, i) => irregular(10 + i, { subjects: 4, between: 0.1 })),
+      irregular(399, { subjects: 4, between: 2 }),
+      irregular(335, { subjects: 5, between: 0.1 }),
+    ];
+    const ratios = [0, 0.01, 0.1, 1, 10, 100];
+    for (const model of models) {
+      const { residualVariance, logLikelihood } = fitMixedModel(model);
+      for (const residual of [0.1, 0.3, 0.7, 1, 1.4].map((factor) => factor * residualVariance)) {
+        for (const [a, b, r] of ratios.flatMap((x) =>
+          ratios.flatMap((y) => [-0.99, 0, 0.99].map((z) => [x, y, z] as const)),
+        )) {
+          const [v11, v22] = [a * residual, b * residual];
+          const theta = { residual, v11, v21: r * Math.sqrt(v11 * v22), v22 };
+          expect(-0.5 * denseDeviance(model, theta)).toBeLessThanOrEqual(logLikelihood + 1e-9);
         }
       }
     }
