@@ -10,7 +10,7 @@ import { methodRules, planFields, type FieldSchema } from './plan-schema.ts';
  */
 export function validatePlan(given: unknown): Plan {
   if (!isObject(given)) throw invalidPlan('The plan has to be a JSON object.');
-  const input = withLists(given);
+  const input = normalised(given);
   const method = input['method'];
   if (!isMethodName(method)) throw invalidPlan(`"method" has to be one of ${methodNames.join(', ')}.`);
   for (const [field, value] of Object.entries(input)) {
@@ -33,13 +33,16 @@ export function validatePlan(given: unknown): Plan {
   return { ...defaults, ...input } as unknown as Plan;
 }
 
-function withLists(input: Record<string, unknown>): Record<string, unknown> {
+/** Lone values as lists; what is undefined is not there. */
+function normalised(input: Record<string, unknown>): Record<string, unknown> {
   const isLone = (field: string, value: unknown) =>
     Object.hasOwn(planFields, field) &&
     planFields[field as keyof Plan].type === 'array' &&
     (typeof value === 'string' || typeof value === 'number');
   return Object.fromEntries(
-    Object.entries(input).map(([field, value]) => [field, isLone(field, value) ? [value] : value]),
+    Object.entries(input)
+      .filter(([, value]) => value !== undefined)
+      .map(([field, value]) => [field, isLone(field, value) ? [value] : value]),
   );
 }
 
