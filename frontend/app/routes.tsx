@@ -15,6 +15,10 @@ const page = (path: string, load: () => Promise<LoadedPage>): RouteObject => ({ 
 /** The pages of a study, below `/studies/:studyCode/`: one line a page, each a file in `frontend/pages`. */
 export const studyPages: RouteObject[] = [
   page('now', async () => ({ Component: (await import('#frontend/pages/now-page.tsx')).NowPage })),
+  page('visits', async () => ({ Component: (await import('#frontend/pages/visits-page.tsx')).VisitsPage })),
+  page('visits/:visitId', async () => ({
+    Component: (await import('#frontend/pages/visit-page.tsx')).VisitPage,
+  })),
   page('participants', async () => ({
     Component: (await import('#frontend/pages/participants-page.tsx')).ParticipantsPage,
   })),

@@ -1,4 +1,4 @@
-import { useRef, useState, type ReactNode } from 'react';
+import { useState, type ReactNode } from 'react';
 import { usePreference } from '../lib/preferences.ts';
 import { useUrlSort } from '../lib/use-url-state.ts';
 import { classNames } from './class-names.ts';
@@ -56,7 +56,8 @@ export function DataTable<Row>(props: DataTableProps<Row>) {
     defaultSort,
     rowState,
   } = props;
-  const scroller = useRef<HTMLDivElement>(null);
+  // An element in state, not a ref: the virtual rows must hear when it is there.
+  const [scroller, setScroller] = useState<HTMLDivElement | null>(null);
   const [sort, turnSort] = useUrlSort(sortParam, defaultSort);
   const [hidden, setHidden] = usePreference(`table:${name ?? caption}:hidden`, all);
   const [added, setAdded] = usePreference(`table:${name ?? caption}:added`, all);
@@ -94,7 +95,7 @@ export function DataTable<Row>(props: DataTableProps<Row>) {
         />
       )}
       <div
-        ref={scroller}
+        ref={setScroller}
         role="region"
         aria-label={caption}
         // A region that scrolls must be reachable by keyboard (WCAG 2.1.1).

@@ -1,5 +1,4 @@
 import { useVirtualizer } from '@tanstack/react-virtual';
-import type { RefObject } from 'react';
 import { classNames } from './class-names.ts';
 import type { Column } from './data-table.tsx';
 
@@ -8,7 +7,7 @@ interface TableBodyProps<Row> {
   rows: readonly Row[];
   rowKey: (row: Row) => string;
   rowState: ((row: Row) => string | undefined) | undefined;
-  scroller: RefObject<HTMLDivElement | null>;
+  scroller: HTMLDivElement | null;
   /** Draws only the rows in sight. */
   virtual: boolean;
 }
@@ -32,7 +31,7 @@ function VirtualBody<Row>({ columns, rows, rowKey, rowState, scroller }: TableBo
   // eslint-disable-next-line react-hooks/incompatible-library
   const virtualizer = useVirtualizer({
     count: rows.length,
-    getScrollElement: () => scroller.current,
+    getScrollElement: () => scroller,
     estimateSize: () => 38,
     overscan: 12,
     getItemKey: (index) => rowKey(rows[index]!),

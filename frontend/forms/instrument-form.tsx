@@ -2,7 +2,7 @@ import { memo, useCallback, useId, useMemo, useSyncExternalStore } from 'react';
 import type { FindingDto, Operation } from '#schemas/api/capture.ts';
 import type { CompiledInstrument } from '#schemas/instruments/compiled-instrument.ts';
 import type { InstrumentSchema } from '#schemas/instruments/instrument.ts';
-import { cautionClosing, cautionTexts, type CautionTextCode } from '#schemas/vocabulary/caution-texts.ts';
+import { cautionClosing, cautionTexts } from '#schemas/vocabulary/caution-texts.ts';
 import { Caution } from '../components/caution.tsx';
 import { ErrorState, Skeleton } from '../components/states.tsx';
 import { FormEnvironmentContext } from './form-context.ts';
@@ -125,8 +125,10 @@ const noDefaults = {
   constAsDefaults: 'never',
 } as const;
 
+const knownCautions: Record<string, { title: string; text: string } | undefined> = cautionTexts;
+
 function Cautions({ codes }: { codes: readonly string[] }) {
-  const texts = codes.flatMap((code) => (code in cautionTexts ? cautionTexts[code as CautionTextCode] : []));
+  const texts = codes.flatMap((code) => knownCautions[code] ?? []);
   if (texts.length === 0) return null;
   return (
     <div className="flex flex-col gap-2">

@@ -20,7 +20,7 @@ export function ReadingSummary({ field }: { field: CompiledField }) {
         )}
       </span>
       <span className="text-xs whitespace-nowrap text-ink-soft">
-        {counted.length} of {field.readings?.minimum} needed
+        {counted.length} count, {field.readings?.minimum} needed
       </span>
     </span>
   );

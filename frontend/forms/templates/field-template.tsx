@@ -57,11 +57,15 @@ function FieldFrame({ id, field, required, wide, children }: FieldFrameProps) {
   const canMiss = !field.derived && !hidden;
   if (isGroup(field)) {
     return (
-      <fieldset className={classNames('group/field flex min-w-0 flex-col gap-1', wide && 'sm:col-span-full')}>
-        <legend className="mb-1 flex w-full items-baseline justify-between gap-3 text-sm">
-          <span>{label}</span>
-          {canMiss && <MissingControl field={field} required={required} />}
-        </legend>
+      <fieldset
+        className={classNames('group/field relative flex min-w-0 flex-col gap-1', wide && 'sm:col-span-full')}
+      >
+        <legend className="mb-1 text-sm">{label}</legend>
+        {canMiss && (
+          <div className="absolute top-0 right-0 text-sm">
+            <MissingControl field={field} required={required} />
+          </div>
+        )}
         {rest}
       </fieldset>
     );

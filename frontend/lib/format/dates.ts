@@ -20,7 +20,10 @@ export function zoneOffset(instant: string, zone = deviceZone): string {
   const name = formatter(zone, true)
     .formatToParts(new Date(instant))
     .find(({ type }) => type === 'timeZoneName');
-  return (name?.value ?? 'GMT').replace('GMT', 'UTC').replace('-', '−');
+  return (name?.value ?? 'GMT')
+    .replace('GMT', 'UTC')
+    .replace(/[+-]0$/, '')
+    .replace('-', '−');
 }
 
 /** `6 days`, `3 h`, `12 min`: how long ago. Only beside the absolute time. */

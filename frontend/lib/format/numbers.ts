@@ -44,7 +44,7 @@ const withMinus = (digits: string) => digits.replace('-', '−');
 
 /** `toPrecision` without its exponent form, so 1234 with 3 digits stays 1234: whole digits are never rounded away. */
 function plainDigits(value: number, significant: number): string {
-  const whole = Math.max(1, Math.floor(Math.log10(Math.abs(value) || 1)) + 1);
+  const whole = Math.floor(Math.log10(Math.abs(value) || 1)) + 1;
   return value.toFixed(Math.max(0, Math.min(100, significant - whole)));
 }
 
