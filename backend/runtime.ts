@@ -1,6 +1,7 @@
 import pg from 'pg';
 import { buildApplication, type Application } from './app.ts';
-import type { ObjectStoreSettings, Settings } from './config/settings.ts';
+import type { ObjectStoreSettings } from './config/setting-groups.ts';
+import type { Settings } from './config/settings.ts';
 import { connect } from './database/orm.ts';
 import type { Deps } from './http/deps.ts';
 import { logger, stackOf } from './http/logger.ts';

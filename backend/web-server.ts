@@ -1,6 +1,6 @@
 import { createServer, type RequestListener, type Server, type ServerResponse } from 'node:http';
 import type { AddressInfo } from 'node:net';
-import { localOrigin } from './config/settings.ts';
+import { localOrigin } from './config/setting-groups.ts';
 import { StartError } from './config/start-error.ts';
 
 export interface WebServer {

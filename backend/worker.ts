@@ -20,7 +20,8 @@ export async function startWorker(
   timing?: Partial<QueueTiming>,
 ): Promise<Queue> {
   const queue = await startQueue(appUrl, {
-    onError: (error, name) => logger.error({ error: stackOf(error), queue: name }, name ? 'a job failed' : 'the queue met an error'),
+    onError: (error, name) =>
+      logger.error({ error: stackOf(error), queue: name }, name ? 'a job failed' : 'the queue met an error'),
     timing,
   });
   const fork = () => orm.em.fork();

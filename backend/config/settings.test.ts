@@ -204,7 +204,7 @@ describe('the table of settings', () => {
   });
 
   it('names every setting that the code reads', () => {
-    const sources = ['settings.ts', 'local-secrets.ts'].map((name) =>
+    const sources = ['settings.ts', 'setting-groups.ts', 'local-secrets.ts'].map((name) =>
       readFileSync(join(import.meta.dirname, name), 'utf8'),
     );
     const calls = /(?:text|url|key|integer|oneOf)\('([A-Z0-9_]+)'|environment\['([A-Z_]+)'\]/g;

@@ -10,7 +10,7 @@ import {
 import { Upload } from '@aws-sdk/lib-storage';
 import { createHash, randomUUID } from 'node:crypto';
 import { Readable } from 'node:stream';
-import type { ObjectStoreSettings } from '../config/settings.ts';
+import type { ObjectStoreSettings } from '../config/setting-groups.ts';
 
 interface StoredObject {
   key: string;
