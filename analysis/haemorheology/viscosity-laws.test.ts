@@ -52,7 +52,8 @@ describe('bulk laws', () => {
   it.each(viscosityLaws.filter(({ id }) => !/vitro|vivo/.test(id)).map(({ id }) => id))(
     '%s: refused below 10 um, cautioned below 300 um',
     (id) => {
-      expect(() => at(id, 0.42, { diameter: 9 })).toThrow(/diameter/);
+      expect(() => at(id, 0.42, { diameter: 9.99 })).toThrow(/diameter/);
+      expect(at(id, 0.42, { diameter: 10 }).viscosity).toBeGreaterThan(1);
       expect(at(id, 0.42, { diameter: 100 }).cautions.map(({ code }) => code)).toContain('SMALL_VESSEL');
       expect(at(id, 0.42, { diameter: 500 }).cautions.map(({ code }) => code)).not.toContain('SMALL_VESSEL');
     },

@@ -1,5 +1,6 @@
 import { existsSync, readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
+import algebra from '../reference/haemodynamics/algebra.json' with { type: 'json' };
 import published from '../reference/haemodynamics/published.json' with { type: 'json' };
 import viscosityTable from '../reference/haemodynamics/viscosity-table.json' with { type: 'json' };
 import { convert } from '../units/convert.ts';
@@ -14,14 +15,29 @@ interface SharedCase {
   rel_tol: number;
 }
 
+interface OwnCase {
+  quantity: string;
+  inputs: Record<string, GivenInput>;
+  expected: { value: number; unit: string };
+  relative_tolerance: number;
+  source: string;
+}
+
 const sharedFile = new URL('../../../shared/reference/haemodynamics/cases.json', import.meta.url);
 const shared = existsSync(sharedFile) ? (JSON.parse(readFileSync(sharedFile, 'utf8')) as SharedCase[]) : [];
 
-describe('published numbers', () => {
-  it.each(published.map((each) => ({ ...each, title: `${each.quantity}: ${each.source}` })))(
+const own = [...published, ...algebra] as unknown as OwnCase[];
+
+describe('published numbers and hand algebra', () => {
+  it('cover every quantity', () => {
+    const covered = new Set([...own, ...viscosityTable.rows].map(({ quantity }) => quantity));
+    expect([...quantities.keys()].filter((key) => !covered.has(key))).toEqual([]);
+  });
+
+  it.each(own.map((each) => ({ ...each, title: `${each.quantity}: ${each.source}` })))(
     '$title',
     ({ quantity, inputs, expected, relative_tolerance }) => {
-      const derived = derive(quantity, inputs as unknown as Record<string, GivenInput>);
+      const derived = derive(quantity, inputs);
       const value = convert(derived.value, derived.unit, expected.unit);
       expect(Math.abs(value - expected.value)).toBeLessThanOrEqual(
         relative_tolerance * Math.abs(expected.value),
