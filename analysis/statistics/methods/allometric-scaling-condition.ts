@@ -1,6 +1,6 @@
 import { adjustPValues } from '../core/adjust.ts';
 import { AnalysisError } from '../core/analysis-error.ts';
-import { indexIn, requireSubjects } from '../core/cells.ts';
+import { indexIn, logarithmsOf, requireSubjects } from '../core/cells.ts';
 import { isConstantOnGrid, roundingGrid } from '../core/grid.ts';
 import { mean } from '../core/moments.ts';
 import { required, type Plan } from '../core/plan.ts';
@@ -40,8 +40,8 @@ export function allometricByCondition(
   const subjectPositions = new Map<string, number>();
   const subjectOf = Int32Array.from(used, (row) => positionOf(subjectPositions, subjects[row]!));
   requireSubjects(subjectPositions.size, 2);
-  const logPeak = Float64Array.from(used, (row) => Math.log(peaks[row]!));
-  const logBaseline = Float64Array.from(used, (row) => Math.log(baselines[row]!));
+  const logPeak = logarithmsOf(Float64Array.from(used, (row) => peaks[row]!));
+  const logBaseline = logarithmsOf(Float64Array.from(used, (row) => baselines[row]!));
   if (isConstantOnGrid(logBaseline, roundingGrid(logBaseline))) throw new AnalysisError('zero_variance');
   const ratio = logPeak.map((value, i) => value - logBaseline[i]!);
   const shift = mean(ratio);

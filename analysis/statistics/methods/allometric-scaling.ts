@@ -1,6 +1,6 @@
 import { studentTTwoSided } from '../../numerics/student-t.ts';
 import { AnalysisError } from '../core/analysis-error.ts';
-import { requireSubjects } from '../core/cells.ts';
+import { logarithmsOf, requireSubjects } from '../core/cells.ts';
 import { isConstantOnGrid, roundingGrid } from '../core/grid.ts';
 import type { Method } from '../core/method.ts';
 import { correlation, mean, standardDeviation, sumOfSquares } from '../core/moments.ts';
@@ -35,7 +35,7 @@ function powerLaw({ confidence }: Plan, { subjects, peaks, baselines }: PeakRows
   const [peak, baseline] = [peaks.filter(isUsed), baselines.filter(isUsed)];
   const n = peak.length;
   requireSubjects(n, 3);
-  const [logPeak, logBaseline] = [peak.map(Math.log), baseline.map(Math.log)];
+  const [logPeak, logBaseline] = [logarithmsOf(peak), logarithmsOf(baseline)];
   if (isConstantOnGrid(logBaseline, roundingGrid(logBaseline))) throw new AnalysisError('zero_variance');
   const line = regressOn(logBaseline, logPeak, { confidence });
   const df = n - 2;

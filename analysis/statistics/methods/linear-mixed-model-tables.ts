@@ -46,7 +46,7 @@ export function anovaTable({ design, fit, inference }: FittedPlan): Row[] {
     const rows =
       terms.length > 1 ? typeThreeRows(design, term, weights) : sequentialRows(term, fit.crossProducts);
     const { f, df1, df2 } = inference.test(rows);
-    const exists = f >= 0 && df2 > 0;
+    const exists = f >= 0 && df2 > 0 && Number.isFinite(df2);
     return { term: term.name, df_1: df1, df_2: df2, f, p_value: exists ? fUpperTail(f, df1, df2) : null };
   });
 }

@@ -18,7 +18,7 @@ export interface Covariate {
 export type Variable = Factor | Covariate;
 
 /** A covariate enters the columns as (value − origin) / unit. */
-export interface CovariateScale {
+interface CovariateScale {
   readonly origin: number;
   readonly unit: number;
 }

@@ -17,7 +17,7 @@ export interface RandomEffects {
 const BOUNDARY = 1e-5;
 
 /** Λ of intercept and slope of the covariate as it is, from Λ of the scaled covariate. */
-export function factorOnDataScale(
+function factorOnDataScale(
   [l11, l21, l22]: RelativeFactor,
   slope: SlopeCovariate | null,
 ): RelativeFactor {
