@@ -24,7 +24,7 @@ export function fromCursor(cursor: string | undefined, length: number): (string 
     const key: unknown = JSON.parse(Buffer.from(cursor, 'base64url').toString('utf8'));
     const good = Array.isArray(key) && key.length === length;
     if (good && key.every((part) => typeof part === 'string' || typeof part === 'number')) {
-      return key as (string | number)[];
+      return key;
     }
   } catch {
     // Falls through to the refusal: what cannot be read was not made here.

@@ -1,7 +1,7 @@
 import canonicalizeModule from 'canonicalize';
 import { createHash } from 'node:crypto';
 
-const canonicalize = canonicalizeModule as unknown as (value: unknown) => string | undefined;
+const canonicalize = canonicalizeModule;
 
 /** RFC 8785 form of a JSON value; refuses what JSON cannot say (NaN, undefined at the top). */
 export function canonicalForm(value: unknown): string {

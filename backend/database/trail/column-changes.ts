@@ -1,4 +1,4 @@
-import type { ChangeSet, EntityManager } from '@mikro-orm/postgresql';
+import { ChangeSetType, type ChangeSet, type EntityManager } from '@mikro-orm/postgresql';
 import { auditRuleOf, type AuditRule } from '../audited.ts';
 import { canonicalHash } from './canonical.ts';
 import type { EventChange } from './event-form.ts';
@@ -51,12 +51,12 @@ export async function columnChanges(
     const subjectId = subjectIdOf(changeSet);
     for (const [column, raw] of Object.entries(changeSet.payload as Record<string, unknown>)) {
       const value = trailValue(rule, column, raw);
-      if (value === undefined || (value === null && changeSet.type === 'create')) continue;
+      if (value === undefined || (value === null && changeSet.type === ChangeSetType.CREATE)) continue;
       const level = rule.columns[column] === 'unblinding' ? 'unblinding' : 'open';
       values.push(
         recordedValue({ subjectType: rule.subject, subjectId, address: `/${column}`, value, level }),
       );
-      if (changeSet.type !== 'create') updated.add(subjectId);
+      if (changeSet.type !== ChangeSetType.CREATE) updated.add(subjectId);
     }
   }
   const old =

@@ -22,7 +22,7 @@ import { etag, ifMatch } from '#backend/http/preconditions.ts';
 import { idParameter, type RouteTable } from '#backend/http/route.ts';
 import { liveQuantities } from './live-quantities.ts';
 import type { Visit } from './visit.entity.ts';
-import { listVisits, presentVisits, type VisitQuery } from './visit-list.ts';
+import { listVisits, presentVisits } from './visit-list.ts';
 import { presentOneVisit, presentRunSheet } from './visit.presenter.ts';
 import {
   beginVisit,
@@ -60,7 +60,7 @@ export function declareVisitRoutes({ route }: RouteTable, { orm: { em } }: Deps)
     responds: { status: 200, body: listOf(visitDto) },
     acts: null,
     handler: async (request, response) => {
-      response.json(await listVisits(em, request.query as VisitQuery));
+      response.json(await listVisits(em, request.query));
     },
   });
 

@@ -13,7 +13,7 @@ import { listOf, pageQuery } from '#backend/http/list.ts';
 import { etag, ifMatch } from '#backend/http/preconditions.ts';
 import { idParameter, type RouteTable } from '#backend/http/route.ts';
 import { loadVisit } from '../capture/index.ts';
-import { listQueries, presentQueries, type QueryFilter } from './query.presenter.ts';
+import { listQueries, presentQueries } from './query.presenter.ts';
 import { askQuery, loadQuery, reopenQuery, replyToQuery, settleQuery } from './query.service.ts';
 import { clearMark, verificationOf, verify } from './verification.service.ts';
 
@@ -31,7 +31,7 @@ export function declareMonitoringRoutes({ route }: RouteTable, { orm: { em } }: 
     responds: { status: 200, body: listOf(anyObject) },
     acts: null,
     handler: async (request, response) => {
-      response.json(await listQueries(em, request.query as QueryFilter));
+      response.json(await listQueries(em, request.query));
     },
   });
 

@@ -20,7 +20,7 @@ import { checkChain } from './check-chain.ts';
 import { lockStudy, openPoints, unlockStudy } from './lock.service.ts';
 import { StudyLockSchema, type StudyLock } from './records.entity.ts';
 import { prepareSignature, signaturesOf, signVisit } from './signature.service.ts';
-import { listTrail, type TrailFilter } from './trail-list.ts';
+import { listTrail } from './trail-list.ts';
 
 const study = '/studies/:studyCode';
 const anyObject = { type: 'object' } as const;
@@ -135,7 +135,7 @@ export function declareRecordRoutes({ route }: RouteTable, { orm: { em }, settin
     responds: { status: 200, body: listOf(anyObject) },
     acts: null,
     handler: async (request, response) => {
-      response.json(await listTrail(em, request.query as TrailFilter));
+      response.json(await listTrail(em, request.query));
     },
   });
 
@@ -160,7 +160,7 @@ export function declareRecordRoutes({ route }: RouteTable, { orm: { em }, settin
     responds: { status: 200, body: listOf(anyObject) },
     acts: null,
     handler: async (request, response) => {
-      response.json(await listTrail(em, request.query as TrailFilter));
+      response.json(await listTrail(em, request.query));
     },
   });
 

@@ -6,7 +6,7 @@ import {
   type SourceDocumentDto,
   type UploadSourceQuery,
 } from '#schemas/api/source.ts';
-import type { Attestation, SourceKind, SourceType } from '#schemas/vocabulary/source-kinds.ts';
+import type { SourceKind, SourceType } from '#schemas/vocabulary/source-kinds.ts';
 import { accessible } from '#backend/database/row-filter.ts';
 import type { Deps } from '#backend/http/deps.ts';
 import { etag, ifMatch } from '#backend/http/preconditions.ts';
@@ -35,7 +35,7 @@ async function present(
     size: row.size,
     sha256: row.sha256,
     level: row.level,
-    attestation: row.attestation as Attestation,
+    attestation: row.attestation,
     uploadedBy: names.get(row.uploadedById) ?? '',
     uploadedAt: row.uploadedAt.toISOString(),
     replacedById: row.replacedById ?? null,

@@ -56,8 +56,16 @@ const jsonFile = (name: string, content: unknown): BundleFile => ({
   text: `${JSON.stringify(content, null, 2)}\n`,
 });
 
-const byFirst = (a: readonly Cell[], b: readonly Cell[]): number =>
-  String(a[0]).localeCompare(String(b[0]), 'en');
+const textOf = (cell: Cell | undefined): string => (typeof cell === 'string' ? cell : (cell?.number ?? ''));
+
+/** Rows in the order of their first cells, so that no other order shows through. */
+const byCells =
+  (...places: number[]) =>
+  (a: readonly Cell[], b: readonly Cell[]): number =>
+    places.reduce(
+      (order, at) => order || textOf(a[at]).localeCompare(textOf(b[at]), 'en', { numeric: true }),
+      0,
+    );
 
 function participantsFile(
   { participants: all }: Collected,
@@ -66,7 +74,7 @@ function participantsFile(
 ): BundleFile {
   const rows = all
     .map(({ participant, site }): Cell[] => [codes.of(participant), sites.of(site)])
-    .sort(byFirst);
+    .sort(byCells(0));
   return { name: 'participants.csv', text: csvText(['participant', 'site'], rows) };
 }
 
@@ -84,12 +92,7 @@ function tableFile({ key, version, columns, rows }: InstrumentTable, codes: Expo
     name: `data/${key}-v${version}.csv`,
     text: csvText(
       ['participant', 'visit_type', 'step', 'period', 'study_day', ...names],
-      cells.sort(
-        (a, b) =>
-          byFirst(a, b) ||
-          String(a[1]).localeCompare(String(b[1])) ||
-          String(a[2]).localeCompare(String(b[2])),
-      ),
+      cells.sort(byCells(0, 1, 2)),
     ),
   };
 }
@@ -102,11 +105,7 @@ function analysisFile({ table }: StudyResult, codes: ExportCodes): BundleFile {
       return value === null ? null : typeof value === 'number' ? { number: String(value) } : value;
     }),
   );
-  rows.sort(
-    (a, b) =>
-      byFirst(a, b) ||
-      String((a[1] as { number: string }).number).localeCompare((b[1] as { number: string }).number),
-  );
+  rows.sort(byCells(0, 1));
   return { name: 'analysis.csv', text: csvText(analysisColumns, rows) };
 }
 
