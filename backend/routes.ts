@@ -7,6 +7,7 @@ import { declareExportRoutes } from './modules/exports/index.ts';
 import { declareInstrumentsRoutes } from './modules/instruments/index.ts';
 import { declareParticipantsRoutes } from './modules/participants/index.ts';
 import { declareMonitoringRoutes } from './modules/monitoring/index.ts';
+import { declareProtocolRoutes } from './modules/protocol/index.ts';
 import { declareRecordRoutes } from './modules/records/index.ts';
 import { declareSourceRoutes } from './modules/source/index.ts';
 import { declareStudiesRoutes } from './modules/studies/index.ts';
@@ -16,6 +17,7 @@ export function declareRoutes(table: RouteTable, deps: Deps): void {
   declareAccountRoutes(table, deps);
   declareStudiesRoutes(table, deps);
   declareInstrumentsRoutes(table, deps);
+  declareProtocolRoutes(table, deps);
   declareParticipantsRoutes(table, deps);
   declareCaptureRoutes(table, deps);
   declareSourceRoutes(table, deps);

@@ -44,6 +44,7 @@ const principalInvestigator = (member: MembershipFacts): AppRule[] => {
     can(['read', 'create'], ['Deviation'], asFarAsBlinded(study, member)),
     can('read', 'SourceDocument', asFarAsBlinded(study, member)),
     can(['read', 'ask', 'reply', 'settle'], 'Query', asFarAsBlinded(study, member)),
+    can('open', 'Study', { id: member.studyId }),
     can('lock', 'Study', { id: member.studyId }),
     can('read', ['PlanVersion', 'Cut', 'Run', 'ExportRequest'], study),
     can('countersign', 'PlanVersion', study),

@@ -1,10 +1,11 @@
 import type { EntityManager } from '@mikro-orm/postgresql';
-import type { TextProblemDto, VerdictDto } from '#schemas/api/instruments.ts';
+import type { VerdictDto } from '#schemas/api/instruments.ts';
 import type { InstrumentProblem, InstrumentSchema, SampleEntry } from '#schemas/instruments/instrument.ts';
-import { jsonPlaces, lineAndColumn, placeOf, type JsonPlaces, type Span } from '#schemas/json/json-places.ts';
+import { jsonPlaces } from '#schemas/json/json-places.ts';
 import { canonicalHash } from '#backend/database/trail/canonical.ts';
 import { checkDraft } from './checking/checking.pool.ts';
 import { compareInstruments, unitProblems } from './compare-instruments.ts';
+import { jsonProblems, placedProblem } from './text-problems.ts';
 import { InstrumentVersionSchema, type InstrumentVersion } from './instrument.entity.ts';
 
 /** A draft's text with its samples, and the instrument it is a draft of. */
@@ -29,17 +30,14 @@ export async function judgeDraft(em: EntityManager, draft: JudgedDraft): Promise
   const places = jsonPlaces(text);
   const judgement = { samples: [], differences: [], instrument: null, published, publishable: false };
   if (places.problems.length > 0) {
-    const problems = places.problems.map(({ message, ...span }) =>
-      shown(text, span, { pointer: '', message }, 'error'),
-    );
-    return { ...judgement, problems };
+    return { ...judgement, problems: jsonProblems(text, places) };
   }
   const verdict = await checkDraft(text, samples, { takenIds: await takenIds(em, studyId) });
   const own =
     verdict.problems.length === 0 ? ownProblems(JSON.parse(text) as InstrumentSchema, key, published) : [];
   const problems = [
-    ...[...verdict.problems, ...own].map((problem) => placed(text, places, problem, 'error')),
-    ...verdict.warnings.map((warning) => placed(text, places, warning, 'warning')),
+    ...[...verdict.problems, ...own].map((problem) => placedProblem(text, places, problem, 'error')),
+    ...verdict.warnings.map((warning) => placedProblem(text, places, warning, 'warning')),
   ];
   if (verdict.problems.length + own.length > 0) return { ...judgement, problems };
   const schema = JSON.parse(text) as InstrumentSchema;
@@ -79,34 +77,3 @@ async function takenIds(em: EntityManager, studyId: string): Promise<string[]> {
   );
   return rows.map(({ id }) => id);
 }
-
-function placed(
-  text: string,
-  places: JsonPlaces,
-  problem: InstrumentProblem,
-  severity: TextProblemDto['severity'],
-): TextProblemDto {
-  const value = problem.range === undefined ? undefined : places.places.get(problem.pointer)?.value;
-  if (value === undefined || problem.range === undefined) {
-    return shown(text, placeOf(places, problem.pointer), problem, severity);
-  }
-  const { start, end } = problem.range;
-  const from = insideString(text, value, start);
-  return shown(text, { from, to: Math.max(from + 1, insideString(text, value, end)) }, problem, severity);
-}
-
-/** The position in the text of a character of the string that stands there: escapes take more room than they mean. */
-function insideString(text: string, { from, to }: Span, offset: number): number {
-  let at = from + 1;
-  for (let passed = 0; passed < offset && at < to - 1; passed += 1) {
-    at += text[at] !== '\\' ? 1 : text[at + 1] === 'u' ? 6 : 2;
-  }
-  return at;
-}
-
-const shown = (
-  text: string,
-  { from, to }: Span,
-  { pointer, message }: Pick<InstrumentProblem, 'pointer' | 'message'>,
-  severity: TextProblemDto['severity'],
-): TextProblemDto => ({ pointer, message, severity, from, to, ...lineAndColumn(text, from) });
