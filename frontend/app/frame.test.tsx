@@ -184,7 +184,9 @@ describe('the frame', () => {
     const { client } = open('/account');
     fireEvent.click(await screen.findByRole('button', { name: 'Change the keys for List the keys' }));
     fireEvent.change(screen.getByLabelText('Keys for List the keys'), { target: { value: 'k' } });
-    act(() => client.setQueryData(sessionQuery.queryKey, null));
+    act(() => {
+      client.setQueryData(sessionQuery.queryKey, null);
+    });
     expect(await screen.findByRole('dialog', { name: 'You were signed out' })).toBeTruthy();
     expect(screen.getByLabelText('Keys for List the keys')).toHaveProperty('value', 'k');
   });

@@ -80,7 +80,7 @@ function controlOf(field: CompiledField): HTMLElement {
   const name = field.label + (unit && `, ${unit}`);
   if (field.readings)
     return document.querySelector<HTMLElement>(
-      `[aria-label=\"${field.label}, reading 1${unit && `, ${unit}`}\"]`,
+      `[aria-label="${field.label}, reading 1${unit && `, ${unit}`}"]`,
     )!;
   const labels = [...document.querySelectorAll<HTMLElement>('label, legend, span[id$="/label"]')];
   const label = labels.find(({ textContent }) => spoken(textContent, field) === name);
