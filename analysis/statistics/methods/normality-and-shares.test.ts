@@ -60,6 +60,8 @@ describe('group_share', () => {
       expect(studentTTwoSided(t, 5)).toBeCloseTo(0.05, 11);
     }
     expect(estimates['share']).toBeCloseTo(mean(a) / mean(b), 14);
+    expect(estimates['share_ci_lower']).toBeLessThan(estimates['share']!);
+    expect(estimates['share_ci_upper']).toBeGreaterThan(estimates['share']!);
     expect(estimates['percentile_ci_lower']).toBeGreaterThan(estimates['share_ci_lower']! - 0.1);
   });
 

@@ -40,6 +40,14 @@ describe('wilcoxon_signed_rank', () => {
     expect(warnings.map((warning) => warning.code)).toEqual(['zero_differences', 'normal_approximation']);
   });
 
+  it('corrects towards the mean in the direction of the hypothesis', () => {
+    const data = { x: [1, 1, -2, 3, 0], y: zeros(5) };
+    const z = (direction: string) =>
+      analyseLong({ method: 'wilcoxon_signed_rank', direction }, data).estimates['z'];
+    expect(z('above')).toBeCloseTo(1.5 / Math.sqrt(7.375), 14); // V − 5 − ½
+    expect(z('below')).toBeCloseTo(2.5 / Math.sqrt(7.375), 14); // V − 5 + ½
+  });
+
   it('sees ties of decimals that doubles hide', () => {
     const { estimates } = analyseLong(
       { method: 'wilcoxon_signed_rank' },
@@ -170,6 +178,12 @@ describe('friedman', () => {
       mean_rank_difference: -2,
     });
     expect(tables['pairwise_nemenyi']![1]!['q']).toBeCloseTo(2 * Math.sqrt(3), 14); // √2·2/√(12/18)
+  });
+
+  it('corrects for ties within subjects, by hand', () => {
+    // ranks 1.5, 1.5, 3 and 1, 2, 3: sums 2.5, 3.5, 6; 12·6.5/(2·3·4 − 6/2) = 78/21
+    const { estimates } = analyseLong({ method: 'friedman' }, { a: [1, 1], b: [1, 2], c: [2, 3] });
+    expect(estimates['chi_square']).toBeCloseTo(78 / 21, 14);
   });
 
   it('has no pairwise test where two levels agree in every subject', () => {

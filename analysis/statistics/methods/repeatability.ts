@@ -1,7 +1,6 @@
 import { chiSquareQuantile } from '../../numerics/chi-square.ts';
-import { naturalLogarithm } from '../../numerics/natural-logarithm.ts';
 import { AnalysisError } from '../core/analysis-error.ts';
-import { requireSubjects } from '../core/cells.ts';
+import { logarithmsOf, requireSubjects } from '../core/cells.ts';
 import { isConstantOnGrid, roundingGrid } from '../core/grid.ts';
 import type { Method } from '../core/method.ts';
 import { mean, sumOfSquares, variance } from '../core/moments.ts';
@@ -79,6 +78,6 @@ function rootMeanSquareVariation(groups: readonly Float64Array[]): number {
 
 /** exp(pooled SD of logarithms) − 1; Bland & Altman 1996, BMJ 313:106. */
 function logarithmicVariation(groups: readonly Float64Array[], dfWithin: number): number {
-  const squares = groups.reduce((sum, group) => sum + sumOfSquares(group.map(naturalLogarithm)), 0);
+  const squares = groups.reduce((sum, group) => sum + sumOfSquares(logarithmsOf(group)), 0);
   return Math.expm1(Math.sqrt(squares / dfWithin));
 }
