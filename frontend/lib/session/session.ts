@@ -4,11 +4,7 @@ import type { SessionDto } from '#schemas/api/accounts.ts';
 import { api, ApiProblem } from '../api.ts';
 
 /** Who is signed in, what they may be, what they are now. */
-export interface Session extends SessionDto {
-  /** Base64 of 32 bytes that only this person is given: seals what waits on the device. */
-  deviceKey?: string;
-}
-
+export type Session = SessionDto;
 export type Acting = NonNullable<Session['acting']>;
 export type Membership = Session['memberships'][number];
 
