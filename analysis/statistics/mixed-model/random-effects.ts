@@ -17,10 +17,7 @@ export interface RandomEffects {
 const BOUNDARY = 1e-5;
 
 /** Λ of intercept and slope of the covariate as it is, from Λ of the scaled covariate. */
-function factorOnDataScale(
-  [l11, l21, l22]: RelativeFactor,
-  slope: SlopeCovariate | null,
-): RelativeFactor {
+function factorOnDataScale([l11, l21, l22]: RelativeFactor, slope: SlopeCovariate | null): RelativeFactor {
   if (slope === null) return [l11, 0, 0];
   const { origin, unit } = slope;
   // Effects (b₀ − b₁·origin/unit, b₁/unit): two rows, made lower triangular by a rotation.
