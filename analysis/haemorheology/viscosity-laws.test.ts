@@ -123,7 +123,9 @@ describe('Quemada law', () => {
   it('is packed where the fixed parameters say so', () => {
     // k₀ H/2 = 1 at H = 2/4.33 = 0.4619 at rest
     expect(at('quemada-fixed', 0.46, { shearRate: 0 }).viscosity).toBeGreaterThan(1000);
-    expect(() => at('quemada-fixed', 0.463, { shearRate: 0 })).toThrow(/packed/);
+    expect(() => at('quemada-fixed', 0.463, { shearRate: 0 })).toThrow(
+      /below 0.4619, where the cells would be packed/,
+    );
   });
 });
 

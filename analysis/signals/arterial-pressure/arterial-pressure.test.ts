@@ -108,6 +108,16 @@ describe('a record as it comes from the bedside', () => {
     expect(Math.abs(found.systolic - 120)).toBeLessThan(0.6);
   });
 
+  it('whose clock starts elsewhere gives the same beats, later', () => {
+    const early = pressure(125);
+    const late = { ...early, times: early.times.map((time) => time + 5000) };
+    const [found, expected] = [arterialPressure(late), arterialPressure(early)];
+    expect(found.beats).toHaveLength(expected.beats.length);
+    expect(found.upstrokes).toBe(expected.upstrokes);
+    expect(found.beats[0]!.start - 5000).toBeCloseTo(expected.beats[0]!.start, 6);
+    expect(found.systolic).toBeCloseTo(expected.systolic, 6);
+  });
+
   it('in kilopascal gives the same numbers', () => {
     const kilopascal = { ...changed(pressure(125), (value) => value * 0.133322387415), unit: 'kPa' };
     expect(arterialPressure(kilopascal).systolic).toBeCloseTo(arterialPressure(pressure(125)).systolic, 9);

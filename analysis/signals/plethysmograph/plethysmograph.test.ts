@@ -141,6 +141,14 @@ describe('plethysmograph readings', () => {
     expect(upsideDown[0]!.flow).toBeCloseTo(calibrated[0]!.flow!, 10);
   });
 
+  it('do not depend on when the clock starts', () => {
+    const shift = (signal: Signal): Signal => ({ ...signal, times: signal.times.map((time) => time + 5000) });
+    const late = plethysmographReadings(shift(volumeTrace()));
+    expect(late.map(({ phase }) => Math.round(phase.onset - 5000))).toEqual(
+      plethysmographReadings(volumeTrace()).map(({ phase }) => Math.round(phase.onset)),
+    );
+  });
+
   it('take no arbitrary units for percent', () => {
     const arbitrary = { ...volumeTrace(), unit: '1' };
     expect(() => plethysmographReadings(arbitrary)).toThrow(
