@@ -5,6 +5,7 @@ import { declareAnalysisRoutes } from './modules/analysis/index.ts';
 import { declareCaptureRoutes } from './modules/capture/index.ts';
 import { declareExportRoutes } from './modules/exports/index.ts';
 import { declareInstrumentsRoutes } from './modules/instruments/index.ts';
+import { declareOverviewRoutes } from './modules/overview/index.ts';
 import { declareParticipantsRoutes } from './modules/participants/index.ts';
 import { declareMonitoringRoutes } from './modules/monitoring/index.ts';
 import { declareProtocolRoutes } from './modules/protocol/index.ts';
@@ -25,4 +26,5 @@ export function declareRoutes(table: RouteTable, deps: Deps): void {
   declareRecordRoutes(table, deps);
   declareAnalysisRoutes(table, deps);
   declareExportRoutes(table, deps);
+  declareOverviewRoutes(table, deps);
 }

@@ -16,6 +16,9 @@ const page = (path: string, load: () => Promise<LoadedPage>): RouteObject => ({ 
 export const studyPages: RouteObject[] = [
   page('now', async () => ({ Component: (await import('#frontend/pages/now-page.tsx')).NowPage })),
   page('visits', async () => ({ Component: (await import('#frontend/pages/visits-page.tsx')).VisitsPage })),
+  page('cuts', async () => ({ Component: (await import('#frontend/pages/cuts-page.tsx')).CutsPage })),
+  page('runs', async () => ({ Component: (await import('#frontend/pages/runs-page.tsx')).RunsPage })),
+  page('runs/:runId', async () => ({ Component: (await import('#frontend/pages/run-page.tsx')).RunPage })),
   page('visits/:visitId', async () => ({
     Component: (await import('#frontend/pages/visit-page.tsx')).VisitPage,
   })),
