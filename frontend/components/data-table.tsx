@@ -5,22 +5,10 @@ import { classNames } from './class-names.ts';
 import { ColumnChoice } from './column-choice.tsx';
 import { EmptyState, FailedState, Skeleton, type Loadable } from './states.tsx';
 import { TableBody } from './table-body.tsx';
+import type { Column } from './table-column.ts';
 import { TableHead } from './table-head.tsx';
 
-export interface Column<Row> {
-  header: string;
-  cell: (row: Row) => ReactNode;
-  /** UCUM code, shown in the head. */
-  unit?: string;
-  /** Name of the order in the address and for the server. */
-  sortKey?: string;
-  /** Sorts here instead of on the server; with `sortKey`. */
-  sortValue?: (row: Row) => string | number;
-  /** Numbers stand at the right. */
-  numeric?: boolean;
-  /** Left out until the person chooses it. */
-  optional?: boolean;
-}
+export type { Column } from './table-column.ts';
 
 interface DataTableProps<Row> {
   /** Says what the table lists; read aloud, and shown unless `captionHidden`. */

@@ -35,7 +35,7 @@ export function TextareaField(
   );
 }
 
-export interface Choice {
+interface Choice {
   value: string;
   label: string;
   help?: string;

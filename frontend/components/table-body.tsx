@@ -1,6 +1,6 @@
 import { useVirtualizer } from '@tanstack/react-virtual';
 import { classNames } from './class-names.ts';
-import type { Column } from './data-table.tsx';
+import type { Column } from './table-column.ts';
 
 interface TableBodyProps<Row> {
   columns: readonly Column<Row>[];

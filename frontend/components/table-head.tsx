@@ -1,7 +1,7 @@
 import { readableUnit, spokenUnit } from '../lib/format/units.ts';
 import type { Sort } from '../lib/use-url-state.ts';
 import { classNames } from './class-names.ts';
-import type { Column } from './data-table.tsx';
+import type { Column } from './table-column.ts';
 
 interface TableHeadProps<Row> {
   columns: readonly Column<Row>[];

@@ -53,6 +53,6 @@ export function DraftInput({
 }
 
 /** The text in the field: what is being typed, else the digits as written, else the value. */
-export function textOf({ draft, written, value }: FieldState): string {
+function textOf({ draft, written, value }: FieldState): string {
   return draft ?? written ?? (value === undefined ? '' : String(value));
 }

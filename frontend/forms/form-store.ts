@@ -8,7 +8,7 @@ import {
 } from '#schemas/instruments/written-number.ts';
 
 /** What stands at an address; `"/systolic/2!rejected"` may also be given as `rejected` of `"/systolic/2"`. */
-export type FormValue = (ValueDto & { rejected?: string }) | HiddenValue;
+type FormValue = (ValueDto & { rejected?: string }) | HiddenValue;
 export type FormValues = Readonly<Record<string, FormValue>>;
 
 /** One address as the form shows it. */
@@ -205,7 +205,7 @@ export class FormStore {
 }
 
 /** `/systolic` of `/systolic/2`; of a field itself, the group around it. */
-export const parentOf = (address: string): string => address.slice(0, Math.max(0, address.lastIndexOf('/')));
+const parentOf = (address: string): string => address.slice(0, Math.max(0, address.lastIndexOf('/')));
 
 function normalised(values: FormValues, hiddenPointers: readonly string[]): Map<string, FieldState> {
   const states = new Map<string, FieldState>();

@@ -1,12 +1,13 @@
 import { memo, useCallback, useId, useMemo, useSyncExternalStore } from 'react';
-import type { FindingDto, Operation } from '#schemas/api/capture.ts';
-import type { CompiledInstrument } from '#schemas/instruments/compiled-instrument.ts';
 import type { InstrumentSchema } from '#schemas/instruments/instrument.ts';
 import { cautionClosing, cautionTexts } from '#schemas/vocabulary/caution-texts.ts';
 import { Caution } from '../components/caution.tsx';
 import { ErrorState, Skeleton } from '../components/states.tsx';
 import { FormEnvironmentContext } from './form-context.ts';
-import type { FormStore, FormValues } from './form-store.ts';
+import type { InstrumentFormProps } from './form-props.ts';
+import type { FormStore } from './form-store.ts';
+
+export type { InstrumentFormProps } from './form-props.ts';
 import { type FormValidator, withoutValidator } from './load-validator.ts';
 import { shapeOf, shapingPointers } from './shape.ts';
 import { ThemedForm } from './theme.ts';
@@ -14,33 +15,6 @@ import { useCommitOnLeaving } from './use-commit-on-leaving.ts';
 import { useFormStore } from './use-form-store.ts';
 import { useSchemaFindings } from './use-schema-findings.ts';
 import { useValidator } from './use-validator.ts';
-
-export interface InstrumentFormProps {
-  schema: InstrumentSchema;
-  compiled: CompiledInstrument;
-  /**
-   * Address → value, derived ones included. When the entry was saved, lay the changes still under way over it:
-   * whatever stands here replaces what the form shows, except text that is being typed.
-   */
-  values: FormValues;
-  /** Fields that the viewer may not know. */
-  hiddenPointers?: readonly string[];
-  /** One field or single reading was changed. */
-  onOperation: (operation: Operation) => void;
-  /** Text typed and not yet a value, to be kept on the device; an empty text forgets it. */
-  onDraft?: (draft: { pointer: string; text: string }) => void;
-  /** Drafts kept from before, address → text. */
-  drafts?: Readonly<Record<string, string>>;
-  /** What the server's checks say. */
-  findings?: readonly FindingDto[];
-  /** Keeps a value that a soft check asks about. */
-  onConfirm?: (finding: FindingDto, reason: string) => void;
-  readOnly?: boolean;
-  /** Where the server's compiled validator is; without it conditional fields are all shown. */
-  validatorUrl?: string;
-  /** IANA zone of the site, for times. */
-  zone?: string;
-}
 
 /** An instrument as a form. The same for coordinators, for the preview at the drafting table and for paper. */
 export function InstrumentForm({ validatorUrl, ...props }: InstrumentFormProps) {

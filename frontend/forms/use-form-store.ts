@@ -1,6 +1,6 @@
 import { useEffect, useState } from 'react';
 import { FormStore } from './form-store.ts';
-import type { InstrumentFormProps } from './instrument-form.tsx';
+import type { InstrumentFormProps } from './form-props.ts';
 
 type StoreProps = Pick<
   InstrumentFormProps,

@@ -86,7 +86,7 @@ const isWide = (field: CompiledField, maxLength: number | undefined): boolean =>
   field.type === 'choices' || isLong(field, maxLength);
 
 /** Several controls under one name. */
-export const isGroup = ({ type, choices }: CompiledField): boolean =>
+const isGroup = ({ type, choices }: CompiledField): boolean =>
   type === 'boolean' || type === 'choices' || (choices !== undefined && choices.length <= radioLimit);
 
 /** Up to so many choices are all seen at once; more become a list. */
