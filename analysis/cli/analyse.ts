@@ -75,9 +75,12 @@ function answerLines(): void {
   let rest = '';
   process.stdin.setEncoding('utf8');
   process.stdin.on('data', (chunk: string) => {
-    const lines = (rest + chunk).split('\n');
-    rest = lines.pop()!;
-    for (const line of lines) answerLine(line);
+    const [first = '', ...others] = chunk.split('\n');
+    rest += first;
+    for (const line of others) {
+      answerLine(rest);
+      rest = line;
+    }
   });
   process.stdin.on('end', () => {
     if (rest !== '') answerLine(rest);

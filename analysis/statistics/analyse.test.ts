@@ -50,6 +50,12 @@ describe('refusals', () => {
 
   it.each<[string, object, string | null, object]>([
     ['a plan that is no object', [], good, { code: 'invalid_plan' }],
+    [
+      'levels of no condition',
+      { method: 'repeatability', outcome: 'value', subject: 'subject', levels: ['x'] },
+      good,
+      { code: 'invalid_plan' },
+    ],
     ['an open quote', paired, 'subject,condition,value\n"a,x,1', { code: 'malformed_csv' }],
     ['no data row', paired, 'subject,condition,value\n', { code: 'empty_data' }],
     ['no data at all', paired, null, { code: 'empty_data' }],

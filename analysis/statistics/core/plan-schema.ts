@@ -211,6 +211,32 @@ export const methodRules: Readonly<Record<MethodName, MethodRule>> = {
   multiplicity: { required: ['outcome'] },
 };
 
+const directional: readonly MethodName[] = [
+  'paired_t',
+  'wilcoxon_signed_rank',
+  'sign_test',
+  'geometric_mean_ratio',
+  'permutation_paired',
+  'power_paired_t',
+  'power_crossover',
+];
+const untransformed: readonly MethodName[] = [
+  'repeatability',
+  'group_share',
+  'correlation_within_subject',
+  'dose_response',
+  'multiplicity',
+  'allometric_scaling',
+];
+
+/** Fields that a method takes with one value only: to ignore a direction or a logarithm would answer another question. */
+export function settledFields(method: MethodName): Partial<Record<keyof Plan, string>> {
+  return {
+    ...(!directional.includes(method) && { direction: 'both' }),
+    ...(untransformed.includes(method) && { transform: 'none' }),
+  };
+}
+
 /**
  * JSON Schema (2020-12) of an analysis plan: what `validatePlan` enforces, for editors, the API and its description.
  * What one field means for another (bounds in order, two of three power quantities) is left to the methods.
@@ -226,12 +252,17 @@ export const planSchema = {
     if: { properties: { method: { const: method } }, required: ['method'] },
     then: {
       required: methodRules[method].required,
-      properties: Object.fromEntries(
-        Object.entries(methodRules[method].counts ?? {}).map(([field, [minItems, maxItems]]) => [
-          field,
-          Number.isFinite(maxItems) ? { minItems, maxItems } : { minItems },
-        ]),
-      ),
+      properties: {
+        ...Object.fromEntries(
+          Object.entries(methodRules[method].counts ?? {}).map(([field, [minItems, maxItems]]) => [
+            field,
+            Number.isFinite(maxItems) ? { minItems, maxItems } : { minItems },
+          ]),
+        ),
+        ...Object.fromEntries(
+          Object.entries(settledFields(method)).map(([field, value]) => [field, { const: value }]),
+        ),
+      },
     },
   })),
 } as const;

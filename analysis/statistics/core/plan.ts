@@ -104,3 +104,9 @@ type PlanWith<Field extends keyof Plan> = Plan & Required<Pick<Plan, Field>>;
 function hasFields<Field extends keyof Plan>(plan: Plan, fields: readonly Field[]): plan is PlanWith<Field> {
   return fields.every((field) => plan[field] !== undefined);
 }
+
+/** Levels are those of a condition. Errors: invalid_plan. */
+export function requireConditionOfLevels({ levels, condition }: Plan): void {
+  if (levels !== undefined && condition === undefined)
+    throw invalidPlan('"levels" needs "condition" beside it.');
+}

@@ -39,6 +39,11 @@ const invalid: [string, unknown][] = [
   ['a confidence of 1', { ...paired, confidence: 1 }],
   ['a confidence in words', { ...paired, confidence: '0.95' }],
   ['a null where a value belongs', { ...paired, null_value: null }],
+  ['a direction of a two-sided method', { ...paired, method: 'bootstrap_ci', direction: 'above' }],
+  [
+    'a logarithm of changes',
+    { method: 'group_share', outcome: 'b', subject: 's', covariates: ['a'], transform: 'log' },
+  ],
   ['an unknown direction', { ...paired, direction: 'greater' }],
   ['too few levels for ranks of k samples', { ...paired, method: 'friedman' }],
   ['a fraction of a resample', { ...paired, method: 'bootstrap_ci', resamples: 10.5 }],

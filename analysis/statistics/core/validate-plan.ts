@@ -1,6 +1,6 @@
 import { invalidPlan } from './analysis-error.ts';
 import { methodNames, type MethodName, type Plan } from './plan.ts';
-import { methodRules, planFields, type FieldSchema } from './plan-schema.ts';
+import { methodRules, planFields, settledFields, type FieldSchema } from './plan-schema.ts';
 
 /**
  * The plan with its defaults, or AnalysisError invalid_plan that names the field and what it has to be.
@@ -28,6 +28,11 @@ export function validatePlan(given: unknown): Plan {
       throw invalidPlan(
         `The method ${method} needs ${countText(least, most)} in "${field}", not ${list.length}.`,
       );
+    }
+  }
+  for (const [field, value] of Object.entries(settledFields(method))) {
+    if (input[field] !== undefined && input[field] !== value) {
+      throw invalidPlan(`The method ${method} takes "${field}" only as ${value}.`);
     }
   }
   return { ...defaults, ...input } as unknown as Plan;

@@ -91,15 +91,13 @@ function proportionalBias({ n, x, y, difference, grid }: Pairs, plan: Plan): Rec
 /** Replicates of a value that does not change: Bland & Altman 1999, sections 5.1 and 5.2. */
 function replicatedConstant(plan: Plan, table: Table): Outcome {
   const { names, values, cellOf, subjects } = usedRows(plan, table);
-  const lists = (level: number) =>
-    names.map((name) =>
-      Float64Array.from(
-        values.filter(
-          (value, row) => subjects[row] === name && cellOf[row] === level && !Number.isNaN(value),
-        ),
-      ),
-    );
-  const [allX, allY] = [lists(0), lists(1)];
+  const lists = new Map(names.map((name) => [name, [[], []] as [number[], number[]]]));
+  subjects.forEach((name, row) => {
+    const level = cellOf[row]!;
+    if (level >= 0 && !Number.isNaN(values[row]!)) lists.get(name)![level]!.push(values[row]!);
+  });
+  const allX = names.map((name) => Float64Array.from(lists.get(name)![0]));
+  const allY = names.map((name) => Float64Array.from(lists.get(name)![1]));
   const kept = names.map((_, i) => allX[i]!.length > 0 && allY[i]!.length > 0);
   const x = allX.filter((_, i) => kept[i]);
   const y = allY.filter((_, i) => kept[i]);

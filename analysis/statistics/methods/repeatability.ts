@@ -5,13 +5,14 @@ import { isConstantOnGrid, roundingGrid } from '../core/grid.ts';
 import type { Method } from '../core/method.ts';
 import { mean, sumOfSquares, variance } from '../core/moments.ts';
 import { oneWayBySubject } from '../core/one-way.ts';
-import { required, type Plan } from '../core/plan.ts';
+import { required, requireConditionOfLevels, type Plan } from '../core/plan.ts';
 import { warning } from '../core/result.ts';
 import type { Table } from '../core/table.ts';
 
 /** Within-subject standard deviation, repeatability coefficient and coefficients of variation of repeated values. */
 export const repeatability: Method = {
   name: 'repeatability',
+  check: requireConditionOfLevels,
   run(plan, table) {
     const bySubject = valuesBySubject(plan, table);
     const names = [...bySubject.keys()];

@@ -5,13 +5,14 @@ import { isConstantOnGrid, roundingGrid } from '../core/grid.ts';
 import type { Method } from '../core/method.ts';
 import { centred, mean, standardDeviation } from '../core/moments.ts';
 import { pairsOf } from '../core/paired-difference.ts';
-import { required, type Plan } from '../core/plan.ts';
+import { required, requireConditionOfLevels, type Plan } from '../core/plan.ts';
 import type { Dropped } from '../core/result.ts';
 import type { Table } from '../core/table.ts';
 
 /** Shapiro–Wilk test of normality, of paired differences or of one value a subject, with the moments. */
 export const shapiroWilk: Method = {
   name: 'shapiro_wilk',
+  check: requireConditionOfLevels,
   run(plan, table) {
     const { values, dropped } =
       plan.levels?.length === 2 ? differencesFor(plan, table) : singleValues(plan, table);
