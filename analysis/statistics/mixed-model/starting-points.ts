@@ -3,12 +3,12 @@ import type { SubjectStatistics } from './subject-statistics.ts';
 
 /** Sizes of the standard deviations of random effects over the residual one that are tried on small data. */
 const SIZES = [0.1, 1, 10];
-/** Above this many numbers to add up for one evaluation, the moments alone start the search. */
-const LARGE = 2000;
+/** With more subjects the likelihood is close to quadratic, and one good start is enough. */
+const MANY = 100;
 
 /**
- * Points to start the search from: variances by moments first, then a coarse grid unless the data are many
- * (their likelihood is close to quadratic, and one good start is enough).
+ * Points to start the search from: variances by moments first, then a coarse grid unless the subjects are
+ * many.
  */
 export function startingPoints(
   statistics: SubjectStatistics,
@@ -17,7 +17,7 @@ export function startingPoints(
 ): Float64Array[] {
   const byMoments = startByMoments(statistics, coefficients);
   const starts = [Float64Array.from(free, (element) => byMoments[element]!)];
-  if (statistics.patterns * statistics.packed > LARGE) return starts;
+  if (statistics.subjects > MANY) return starts;
   const grids = free.map((element) => (element === 1 ? [0] : SIZES));
   const grid = grids.reduce<number[][]>(
     (points, sizes) => points.flatMap((point) => sizes.map((size) => [...point, size])),
