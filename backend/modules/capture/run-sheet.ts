@@ -1,5 +1,6 @@
 import type { EntityManager } from '@mikro-orm/postgresql';
 import type { Protocol, RunSheetStep, VisitType } from '#schemas/protocol/protocol.ts';
+import { withBlocksWrittenOut } from '#schemas/protocol/run-sheet.ts';
 import { ProtocolVersionSchema } from '../protocol/protocol.entity.ts';
 import type { Visit } from './visit.entity.ts';
 
@@ -12,10 +13,11 @@ export async function visitTypeOf(em: EntityManager, visit: Visit): Promise<Visi
   return visitTypeNamed((await protocolOf(em, visit)).content, visit.visitTypeKey);
 }
 
+/** A visit type of a protocol, its repeated blocks written out. */
 export function visitTypeNamed(protocol: Protocol, key: string): VisitType {
   const type = protocol.visitTypes.find((candidate) => candidate.key === key);
   if (type === undefined) throw new Error(`The protocol has no visit type ${key}.`);
-  return type;
+  return withBlocksWrittenOut(type);
 }
 
 export const stepOf = (type: VisitType, key: string): RunSheetStep | undefined =>

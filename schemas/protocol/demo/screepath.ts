@@ -21,7 +21,7 @@ export const screepath: Protocol = {
     { key: 'sham-first', label: 'Sham, then haemodilution', conditions: ['sham', 'haemodilution'] },
   ],
   washoutDays: 84,
-  sites: ['upper-scree', 'tarn-hollow'],
+  sites: ['upper-scree', 'tarn-nook'],
   allocation: { blockSizes: [2, 4], stratifyBySite: true },
   visitTypes: [
     {

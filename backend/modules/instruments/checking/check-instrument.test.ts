@@ -134,6 +134,8 @@ describe('a unit', () => {
     ['mPa·s', 'write mPa.s'],
     ['cmH2O', 'write cm[H2O]'],
     ['smoots', 'is not a UCUM code'],
+    ['10cm', 'is not a UCUM code'],
+    ['mL per min', 'is not a UCUM code'],
     ['', 'is not a UCUM code'],
   ])('%s is refused, with the code that was meant', (unit, words) => {
     expect(unitProblem(unit)).toContain(words);

@@ -31,14 +31,13 @@ const slips: Record<string, string> = {
   celsius: 'Cel',
 };
 
-/**
- * Why a unit is refused, with the code that was probably meant; nothing when it is valid UCUM (IV-09).
- * Stricter than the package in one point: it takes `mL/100mL/min`, where a digit meets a letter.
- */
+/** Why a unit is refused, with the code that was probably meant; nothing when it is valid UCUM (IV-09). */
 export function unitProblem(code: string): string | undefined {
-  const verdict = UcumLhcUtils.getInstance().validateUnitString(code, true);
-  const digitMeetsLetter = /\d[A-Za-z]/.test(code.replaceAll(/\[[^\]]*\]|\{[^}]*\}/g, ''));
-  if (verdict.status === 'valid' && !digitMeetsLetter) return undefined;
+  // The package writes to the console when a code has blanks.
+  const verdict: UnitVerdict = /\s/.test(code)
+    ? { status: 'invalid' }
+    : UcumLhcUtils.getInstance().validateUnitString(code, true);
+  if (verdict.status === 'valid') return undefined;
   const meant = slips[code.toLowerCase()] ?? shownAs(code) ?? verdict.suggestions?.[0]?.units[0]?.[0];
   return `${code} is not a UCUM code${meant === undefined ? '' : `: write ${meant}`}`;
 }
