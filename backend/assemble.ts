@@ -4,6 +4,7 @@ import type { LocalSecrets } from './config/local-secrets.ts';
 import type { Settings } from './config/settings.ts';
 import type { Say } from './config/start-error.ts';
 import { openBucket, openDatabase, openMailServer, type OnStop } from './local-services.ts';
+import { seedDemo } from './modules/demo/index.ts';
 import { prepareDatabase } from './prepare-database.ts';
 import { openRuntime } from './runtime.ts';
 import type { WebServer } from './web-server.ts';
@@ -43,6 +44,7 @@ export async function assemble(settings: Settings, place: Place): Promise<Reques
     say(`the bucket does not answer (${kind}): files cannot be stored or read until it does`);
   });
   await step('worker', () => runtime.work());
+  if (settings.demo) await step('demo data, on the first start only', () => seedDemo(runtime.deps, say));
   const api = runtime.application.express as RequestListener;
   return place.dev ? step('client with reload', () => withReload(api, web.server, onStop)) : api;
 }

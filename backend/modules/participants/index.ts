@@ -4,6 +4,10 @@ import { declareAllocationRoutes, declareUnblindingRoutes } from './allocation.r
 import { declareIdentifiersRoutes } from './identifiers.routes.ts';
 import { declareParticipantRoutes } from './participant.routes.ts';
 
+export { assignAllocation } from './assign-allocation.ts';
+export { confirmEligibility, enrolParticipant } from './participant.service.ts';
+export { sealAllocation } from './seal-allocation.ts';
+export { confirmUnblinding, requestUnblinding } from './unblinding.service.ts';
 export { conditionOf } from './conditions.ts';
 export { assertConsented, recordConsent } from './consent.ts';
 

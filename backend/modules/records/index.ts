@@ -1,3 +1,3 @@
-export { lockStudy } from './lock.service.ts';
+export { lockStudy, openPoints } from './lock.service.ts';
 export { declareRecordRoutes } from './records.routes.ts';
 export { prepareSignature, signaturesOf, signVisit } from './signature.service.ts';
