@@ -1,47 +1,20 @@
-import { useMutation } from '@tanstack/react-query';
-import { useState, type SubmitEvent } from 'react';
-import { Link, useParams } from 'react-router-dom';
-import { Button } from '../components/button.tsx';
-import { ErrorSummary } from '../components/error-summary.tsx';
-import { CheckboxField, TextField } from '../components/fields.tsx';
-import { api, ApiProblem } from '../lib/api.ts';
+import { useQuery } from '@tanstack/react-query';
+import { useState } from 'react';
+import { Link, useLocation } from 'react-router-dom';
+import { Loaded } from '../components/states.tsx';
+import { acceptInvitation, invitedPersonQuery } from '../features/accounts/api/invitations.ts';
+import { ChoosePasswordForm } from '../features/accounts/components/choose-password-form.tsx';
 import { BareLayout } from './bare-layout.tsx';
 
-const minimumLength = 15;
+const declaration =
+  'I understand that signing in Vesselry with my password is the legally binding equivalent of my handwritten signature, and that I lend my account to nobody.';
 
 /** Takes up an invitation: a password of one's own, and the declaration that a signature here binds. */
 export function InvitationPage() {
-  const { token = '' } = useParams();
-  const [missing, setMissing] = useState<{ password?: string; declaration?: string }>({});
-  const accept = useMutation({
-    mutationFn: (password: string) =>
-      api<unknown>(`/invitations/${encodeURIComponent(token)}/acceptance`, {
-        method: 'POST',
-        body: { password, acceptDeclaration: true },
-      }),
-  });
-
-  const handleSubmit = (event: SubmitEvent<HTMLFormElement>) => {
-    event.preventDefault();
-    if (accept.isPending) return;
-    const values = new FormData(event.currentTarget);
-    const password = values.get('password');
-    const written = typeof password === 'string' ? password : '';
-    const found = {
-      ...([...written].length < minimumLength
-        ? {
-            password: `Use at least ${minimumLength} characters; a few words of your own are easy to remember.`,
-          }
-        : {}),
-      ...(values.get('declaration') === null
-        ? { declaration: 'Without this no account can be opened.' }
-        : {}),
-    };
-    setMissing(found);
-    if (Object.keys(found).length === 0) accept.mutate(written);
-  };
-
-  if (accept.isSuccess) {
+  const token = useLocation().hash.slice(1);
+  const query = useQuery(invitedPersonQuery(token));
+  const [accepted, setAccepted] = useState(false);
+  if (accepted) {
     return (
       <BareLayout title="Account opened">
         <section className="flex flex-col gap-3 rounded border bg-paper px-5 py-4">
@@ -56,36 +29,28 @@ export function InvitationPage() {
       </BareLayout>
     );
   }
-
-  const refused =
-    accept.error instanceof ApiProblem
-      ? accept.error.errors.find(({ pointer }) => pointer === '/password')?.detail
-      : undefined;
   return (
     <BareLayout title="Accept the invitation">
       <section className="rounded border bg-paper px-5 py-4">
         <h1 className="mb-3">Accept the invitation</h1>
-        <form onSubmit={handleSubmit} noValidate className="flex flex-col gap-4">
-          {accept.error && <ErrorSummary error={accept.error} />}
-          <TextField
-            label="Choose a password"
-            name="password"
-            type="password"
-            autoComplete="new-password"
-            required
-            help={`At least ${minimumLength} characters, any of them. Long is better than odd.`}
-            error={missing.password ?? refused}
-          />
-          <CheckboxField
-            name="declaration"
-            required
-            label="I understand that signing in Vesselry with my password is the legally binding equivalent of my handwritten signature, and that I lend my account to nobody."
-            error={missing.declaration}
-          />
-          <Button type="submit" variant="primary" large busy={accept.isPending}>
-            Open my account
-          </Button>
-        </form>
+        <Loaded query={query}>
+          {({ name, email }) => (
+            <ChoosePasswordForm
+              email={email}
+              declaration={declaration}
+              act="Open my account"
+              onChoose={async (password) => {
+                await acceptInvitation(token, password);
+                setAccepted(true);
+              }}
+            >
+              <p>
+                For <strong>{name}</strong>, who signs in as <span className="break-all">{email}</span>. If
+                this is not you, leave this page.
+              </p>
+            </ChoosePasswordForm>
+          )}
+        </Loaded>
       </section>
     </BareLayout>
   );

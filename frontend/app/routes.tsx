@@ -14,6 +14,7 @@ const page = (path: string, load: () => Promise<LoadedPage>): RouteObject => ({ 
 
 /** The pages of a study, below `/studies/:studyCode/`: one line a page, each a file in `frontend/pages`. */
 export const studyPages: RouteObject[] = [
+  page('study', async () => ({ Component: (await import('#frontend/pages/study-page.tsx')).StudyPage })),
   page('now', async () => ({ Component: (await import('#frontend/pages/now-page.tsx')).NowPage })),
   page('visits', async () => ({ Component: (await import('#frontend/pages/visits-page.tsx')).VisitsPage })),
   page('cuts', async () => ({ Component: (await import('#frontend/pages/cuts-page.tsx')).CutsPage })),
@@ -40,7 +41,18 @@ export const studyPages: RouteObject[] = [
 ];
 
 /** The administrator's pages, below `/administration/`. */
-export const administrationPages: RouteObject[] = [];
+export const administrationPages: RouteObject[] = [
+  page('people', async () => ({ Component: (await import('#frontend/pages/people-page.tsx')).PeoplePage })),
+  page('people/:personId', async () => ({
+    Component: (await import('#frontend/pages/person-page.tsx')).PersonPage,
+  })),
+  page('studies', async () => ({
+    Component: (await import('#frontend/pages/administration-studies-page.tsx')).AdministrationStudiesPage,
+  })),
+  page('studies/:studyId', async () => ({
+    Component: (await import('#frontend/pages/administration-study-page.tsx')).AdministrationStudyPage,
+  })),
+];
 
 /** Pages of a person, in no study: below `/`. */
 export const personPages: RouteObject[] = [
@@ -52,7 +64,11 @@ export const personPages: RouteObject[] = [
 /** Pages for people who are not signed in. */
 export const openPages: RouteObject[] = [
   page('sign-in', async () => ({ Component: (await import('./sign-in-page.tsx')).SignInPage })),
-  page('invitation/:token', async () => ({
-    Component: (await import('./invitation-page.tsx')).InvitationPage,
+  page('invitation', async () => ({ Component: (await import('./invitation-page.tsx')).InvitationPage })),
+  page('new-password', async () => ({
+    Component: (await import('./new-password-page.tsx')).NewPasswordPage,
+  })),
+  page('forgotten-password', async () => ({
+    Component: (await import('./forgotten-password-page.tsx')).ForgottenPasswordPage,
   })),
 ];

@@ -1,6 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
-import { Navigate, useLocation } from 'react-router-dom';
+import { Link, Navigate, useLocation } from 'react-router-dom';
 import { Mark } from '../components/mark.tsx';
 import { sessionQuery } from '../lib/session/session.ts';
 import { statusQuery, type DemoAccount } from '../lib/status.ts';
@@ -32,6 +32,11 @@ export function SignInPage() {
             Sign in
           </h1>
           <SignInForm key={account?.email} email={account?.email ?? ''} password={account?.password ?? ''} />
+          <p className="mt-3 text-sm">
+            <Link to="/forgotten-password" className="link">
+              Forgotten your password?
+            </Link>
+          </p>
         </section>
         {accounts.length > 0 && (
           <DemoAccounts accounts={accounts} onChoose={setAccount} chosen={account?.email} />

@@ -21,6 +21,7 @@ export const studyTabs: readonly Tab[] = [
   { label: 'Queries', path: 'queries', ability: ['read', 'Query'], key: 'q' },
   { label: 'Instruments', path: 'instruments', ability: ['read', 'InstrumentVersion'], key: 'i' },
   { label: 'Protocol', path: 'protocol', ability: ['read', 'ProtocolVersion'], key: 'o' },
+  { label: 'Study', path: 'study', ability: ['read', 'Study'], key: 'y' },
   { label: 'Cuts', path: 'cuts', ability: ['read', 'Cut'], key: 'c' },
   { label: 'Plans', path: 'plans', ability: ['read', 'PlanVersion'], key: 'l' },
   { label: 'Runs', path: 'runs', ability: ['read', 'Run'], key: 'u' },

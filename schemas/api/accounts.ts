@@ -93,7 +93,8 @@ export interface SessionDto {
     unblinded: boolean;
   } | null;
   rules: unknown[];
-  deviceKey?: string;
+  /** Base64 of 32 bytes that only this person is given: seals what waits on the device. */
+  deviceKey: string;
 }
 
 export const reasonBody = {
