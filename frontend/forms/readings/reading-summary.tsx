@@ -19,7 +19,7 @@ export function ReadingSummary({ field }: { field: CompiledField }) {
           <Quantity written={formatNumber(summary, { decimals: decimalsOf(store.get, field, counted) })} />
         )}
       </span>
-      <span className="text-xs whitespace-nowrap text-ink-soft">
+      <span data-print="hide" className="text-xs whitespace-nowrap text-ink-soft">
         {counted.length} count, {field.readings?.minimum} needed
       </span>
     </span>

@@ -87,7 +87,7 @@ export function ReadingsGrid({
   const allHidden = fields.every(({ pointer }) => store.get(pointer).hidden);
   const asideField = aside && fields[aside.field];
   return (
-    <div className="flex flex-col gap-2 sm:col-span-full">
+    <div className="flex min-w-0 flex-col gap-2 sm:col-span-full">
       <GridTable
         fields={fields}
         required={required}

@@ -55,24 +55,14 @@ function FieldFrame({ id, field, required, wide, children }: FieldFrameProps) {
     </>
   );
   const canMiss = !field.derived && !hidden;
-  if (isGroup(field)) {
-    return (
-      <fieldset
-        className={classNames('group/field relative flex min-w-0 flex-col gap-1', wide && 'sm:col-span-full')}
-      >
-        <legend className="mb-1 text-sm">{label}</legend>
-        {canMiss && (
-          <div className="absolute top-0 right-0 text-sm">
-            <MissingControl field={field} required={required} />
-          </div>
-        )}
-        {rest}
-      </fieldset>
-    );
-  }
-  const named = hidden || missing !== undefined || field.derived;
+  const group = isGroup(field);
+  const named = group || hidden || missing !== undefined || field.derived;
   return (
-    <div className={classNames('group/field flex min-w-0 flex-col gap-1', wide && 'sm:col-span-full')}>
+    <div
+      // A legend cannot stand in a row with the control beside it, so the group is named by its label.
+      {...(group ? { role: 'group', 'aria-labelledby': `${id}/label` } : {})}
+      className={classNames('group/field flex min-w-0 flex-col gap-1', wide && 'sm:col-span-full')}
+    >
       <div className="flex items-baseline justify-between gap-3 text-sm">
         {named ? <span id={`${id}/label`}>{label}</span> : <label htmlFor={id}>{label}</label>}
         {canMiss && <MissingControl field={field} required={required} />}

@@ -35,7 +35,7 @@ export function ObjectTemplate({
   }
   endRun();
 
-  const body = <div className="grid gap-x-5 gap-y-4 sm:grid-cols-2">{parts}</div>;
+  const body = <div className="grid grid-cols-1 gap-x-5 gap-y-4 sm:grid-cols-2">{parts}</div>;
   if (address === '') return body;
   return (
     <fieldset className="flex min-w-0 flex-col gap-2 border-t pt-3 sm:col-span-full">
