@@ -34,6 +34,7 @@ const sessionAs = (role: Role, studyCode = 'SCREEPATH'): Session => ({
     sites: [],
     unblinded: false,
   },
+  deviceKey: '',
   rules: packRules(
     abilityFor({ personId: 'person-1', studyId: 's-1', role, siteIds: null, unblinded: false }).rules,
   ),

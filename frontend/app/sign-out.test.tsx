@@ -13,6 +13,7 @@ const session = {
   memberships: [],
   acting: null,
   rules: [],
+  deviceKey: '',
 };
 
 function show(waiting: number, status = 204) {
