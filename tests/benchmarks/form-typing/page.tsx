@@ -1,4 +1,5 @@
 import Form from '@rjsf/core';
+import type { RJSFSchema } from '@rjsf/utils';
 import { customizeValidator } from '@rjsf/validator-ajv8';
 import { Ajv2020 } from 'ajv/dist/2020.js';
 import { useState } from 'react';
@@ -30,8 +31,8 @@ const ignore = () => undefined;
 function PlainForm() {
   const [formData, setFormData] = useState<unknown>(blankRows);
   return (
-    <Form
-      schema={schema as object}
+    <Form<unknown, RJSFSchema>
+      schema={schema}
       validator={rjsfValidator}
       formData={formData}
       noHtml5Validate
