@@ -11,7 +11,6 @@ import { allocationQuery } from '../features/participants/api/allocation.ts';
 import { participantQuery } from '../features/participants/api/participants.ts';
 import { EmergencyOpening, OpeningNotice } from '../features/participants/components/emergency-opening.tsx';
 import { IdentifiersPanel } from '../features/participants/components/identifiers-panel.tsx';
-import { ParticipantVisits } from '../features/participants/components/participant-visits.tsx';
 import { ParticipationSteps } from '../features/participants/components/participation-steps.tsx';
 import { WithdrawDialog } from '../features/participants/components/withdraw-dialog.tsx';
 import { participantMarks } from '../features/participants/model/participant-words.ts';
@@ -19,6 +18,7 @@ import { say } from '../lib/notices.ts';
 import { useMay } from '../lib/session/ability.ts';
 import { useActing } from '../lib/session/session.ts';
 import { usePageTitle } from '../lib/use-page-title.ts';
+import { ParticipantVisitsCard } from './participant-visits-card.tsx';
 
 /** One participant, by code. */
 export function ParticipantPage() {
@@ -77,7 +77,7 @@ function Participant({ studyCode, participant }: { studyCode: string; participan
               allocated={(allocation.data?.sequences ?? 2) > 1}
             />
             {may('read', 'Visit') && (
-              <ParticipantVisits studyCode={studyCode} participantId={participant.id} />
+              <ParticipantVisitsCard studyCode={studyCode} participant={participant} />
             )}
           </div>
           <div className="flex flex-col gap-4">

@@ -189,6 +189,8 @@ export type AllocationOfParticipant =
 
 export interface ParticipantDto {
   id: string;
+  /** With the site, what the rules of an ability ask about. */
+  studyId: string;
   code: string;
   siteId: string;
   siteCode: string;
@@ -202,6 +204,8 @@ export interface ParticipantDto {
   visits: { completed: number; missed: number; planned: number };
   /** That the condition was opened in an emergency, never what it was. */
   emergencyOpenings: { at: string; by: string }[];
+  /** The version of the protocol that the participant follows. */
+  protocolVersionId: string;
   revision: number;
 }
 
@@ -209,6 +213,7 @@ export const participantDto = {
   ...object,
   required: [
     'id',
+    'studyId',
     'code',
     'siteId',
     'siteCode',
@@ -221,10 +226,12 @@ export const participantDto = {
     'withdrawal',
     'visits',
     'emergencyOpenings',
+    'protocolVersionId',
     'revision',
   ],
   properties: {
     id: uuid,
+    studyId: uuid,
     code: text,
     siteId: uuid,
     siteCode: text,
@@ -275,6 +282,7 @@ export const participantDto = {
       type: 'array',
       items: { ...object, required: ['at', 'by'], properties: { at: instant, by: text } },
     },
+    protocolVersionId: uuid,
     revision: { type: 'integer' },
   },
 } as const;
@@ -328,7 +336,6 @@ export interface WorklistItemDto {
   participantId: string;
   code: string;
   siteCode: string;
-  state: ParticipantState;
   period: number;
   condition: Labelled;
   visits: { key: string; label: string; steps: { label: string; plannedMinute: number }[] }[];
@@ -336,12 +343,11 @@ export interface WorklistItemDto {
 
 export const worklistItemDto = {
   ...object,
-  required: ['participantId', 'code', 'siteCode', 'state', 'period', 'condition', 'visits'],
+  required: ['participantId', 'code', 'siteCode', 'period', 'condition', 'visits'],
   properties: {
     participantId: uuid,
     code: text,
     siteCode: text,
-    state: { enum: participantStates },
     period: { type: 'integer' },
     condition: labelled,
     visits: {

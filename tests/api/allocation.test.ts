@@ -340,6 +340,17 @@ describe('who knows the condition', () => {
     );
     expect(new Set(limited.body.items.map(({ siteCode }) => siteCode))).toEqual(new Set(['UP']));
     expect((await new Client(server).get(`${blinding.path}/allocation/worklist`)).status).toBe(401);
+    const gone = people[0]!;
+    await blinding.coordinator.client.post(
+      `${blinding.path}/participants/${gone.id}/withdrawal`,
+      { reason: 'own wish', withdrawnOn: today, earlierData: 'kept', safetyFollowUp: true },
+      { ifMatch: gone.revision },
+    );
+    const after = await blinding.technician.client.get<{ items: WorklistItemDto[] }>(
+      `${blinding.path}/allocation/worklist`,
+    );
+    expect(after.body.items.some(({ participantId }) => participantId === gone.id)).toBe(false);
+    expect(after.body.items).toHaveLength(46);
     const one = await blinding.technician.client.get<ParticipantDto>(
       `${blinding.path}/participants/${people[0]!.id}`,
     );

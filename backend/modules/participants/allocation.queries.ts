@@ -45,7 +45,10 @@ export async function allocationOverview(em: EntityManager): Promise<AllocationD
   };
 }
 
-/** What to prepare and to take, participant by participant; places that are not assigned are shown to nobody. */
+/**
+ * What to prepare and to take for those who are taking part, participant by participant. Places that are not assigned
+ * are shown to nobody.
+ */
 export async function listWorklist(
   em: EntityManager,
   query: { cursor?: string; limit?: string },
@@ -62,7 +65,13 @@ export async function listWorklist(
     .whereNotNull('participant_id');
   const found = await em.find(
     ParticipantSchema,
-    { $and: [allowed, { id: { $in: assigned } }, after === null ? {} : { code: { $gt: String(after[0]) } }] },
+    {
+      $and: [
+        allowed,
+        { id: { $in: assigned }, state: 'allocated' },
+        after === null ? {} : { code: { $gt: String(after[0]) } },
+      ],
+    },
     { orderBy: { code: 'asc' }, limit: limit + 1 },
   );
   const page = found.slice(0, limit);
@@ -77,7 +86,6 @@ export async function listWorklist(
       participantId: row.id,
       code: row.code,
       siteCode: siteCodes.get(row.siteId) ?? '',
-      state: row.state,
       period,
       condition,
       visits: visitsOf(protocols.get(row.protocolVersionId), period),

@@ -22,6 +22,7 @@ export async function presentParticipants(
   };
   return participants.map((row) => ({
     id: row.id,
+    studyId: row.studyId,
     code: row.code,
     siteId: row.siteId,
     siteCode: siteCodes.get(row.siteId) ?? '',
@@ -34,6 +35,7 @@ export async function presentParticipants(
     withdrawal: withdrawalOf(row),
     visits: around.visits.get(row.id) ?? { completed: 0, missed: 0, planned: 0 },
     emergencyOpenings: around.openings.get(row.id) ?? [],
+    protocolVersionId: row.protocolVersionId,
     revision: row.revision,
   }));
 }

@@ -84,12 +84,8 @@ async function storeSealed(
   { blockSizes, slotsPerSite }: SealAllocationBody,
 ): Promise<AllocationList> {
   const studyId = currentStudyId();
-  const sites = await tx.find(
-    SiteSchema,
-    { studyId, code: { $in: protocol.sites } },
-    { orderBy: { code: 'asc' } },
-  );
-  if (sites.length === 0) throw stateForbids('The protocol names no site of this study.');
+  const sites = await tx.find(SiteSchema, { studyId }, { orderBy: { code: 'asc' } });
+  if (sites.length === 0) throw stateForbids('The study has no site yet.');
   const strata = protocol.allocation.stratifyBySite
     ? sites.map(({ code }) => ({ key: code, slots: slotsPerSite }))
     : [{ key: wholeStudy, slots: slotsPerSite * sites.length }];

@@ -73,8 +73,8 @@ export function useAllocationActs(studyCode: string) {
       });
       client.setQueryData(keys.unblinding(studyCode), data);
       // Everything that was hidden is so no longer, the session's own rules included.
-      await client.invalidateQueries({ queryKey: sessionQuery.queryKey, refetchType: 'all' });
-      await client.invalidateQueries();
+      void client.invalidateQueries({ queryKey: sessionQuery.queryKey, refetchType: 'all' });
+      void client.invalidateQueries();
     },
   };
 }

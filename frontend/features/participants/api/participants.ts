@@ -1,5 +1,5 @@
 import { infiniteQueryOptions, queryOptions, useQueryClient } from '@tanstack/react-query';
-import type { VisitDto } from '#schemas/api/capture.ts';
+import type { PlanVisitBody, VisitDto } from '#schemas/api/capture.ts';
 import type {
   ConfirmEligibilityBody,
   EmergencyOpeningDto,
@@ -29,7 +29,8 @@ const keys = {
     [...keys.all(studyCode), 'list', filters] as const,
   one: (studyCode: string, code: string) => [...keys.all(studyCode), 'one', code] as const,
   readings: (studyCode: string, id: string) => [...keys.all(studyCode), 'readings', id] as const,
-  visits: (studyCode: string, id: string) => [...keys.all(studyCode), 'visits', id] as const,
+  /** Below the key of all visits, so that what is done to one of them shows here too. */
+  visits: (studyCode: string, id: string) => ['visits', studyCode, { participant: id }] as const,
 };
 
 const pathOf = (studyCode: string, id = '') =>
@@ -87,9 +88,13 @@ export function useParticipantActs(studyCode: string, { id, code, revision }: Pa
   const path = pathOf(studyCode, id);
 
   async function change(method: 'POST' | 'PUT', act: string, body: object): Promise<void> {
-    const { data } = await api<ParticipantDto>(`${path}/${act}`, { method, body, ifMatch: revision });
-    client.setQueryData(keys.one(studyCode, code), data);
-    await refresh();
+    try {
+      const { data } = await api<ParticipantDto>(`${path}/${act}`, { method, body, ifMatch: revision });
+      client.setQueryData(keys.one(studyCode, code), data);
+    } finally {
+      // Refused too: someone else may have changed it, and the page then shows the present state.
+      void refresh();
+    }
   }
   const refresh = () => client.invalidateQueries({ queryKey: keys.all(studyCode) });
 
@@ -108,6 +113,11 @@ export function useParticipantActs(studyCode: string, { id, code, revision }: Pa
       const { data } = await api<IdentifiersDto>(`${path}/identifiers/reading`, { method: 'POST', body });
       void client.invalidateQueries({ queryKey: keys.readings(studyCode, id) });
       return data;
+    },
+    planVisit: async (body: PlanVisitBody): Promise<void> => {
+      await api<VisitDto>(`${path}/visits`, { method: 'POST', body });
+      void client.invalidateQueries({ queryKey: ['visits', studyCode] });
+      void refresh();
     },
     writeIdentifiers: (identifiers: IdentifiersBody, reason: string, seen: number) =>
       api<undefined>(`${path}/identifiers`, { method: 'PUT', body: { identifiers, reason }, ifMatch: seen }),

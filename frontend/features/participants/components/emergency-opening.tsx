@@ -42,8 +42,8 @@ export function EmergencyOpening({ studyCode, participant }: EmergencyOpeningPro
           }
         >
           <p>
-            Most emergencies are treated alike whatever was given. If the answer would not change what you do
-            next, leave it sealed: once opened, this participant is unblinded for good.
+            If the answer would not change what you do next, leave it sealed: once opened, this participant is
+            unblinded for good.
           </p>
           <Caution title="Research record, not a prescription">
             The condition is what the sealed list assigns, period by period. Whether it was given stands in

@@ -1,4 +1,4 @@
-import { useEffect, useState } from 'react';
+import { useEffect, useRef, useState } from 'react';
 import type { IdentifiersDto, ParticipantDto } from '#schemas/api/participants.ts';
 import { ActDialog } from '#frontend/components/act-dialog.tsx';
 import { Button } from '#frontend/components/button.tsx';
@@ -36,7 +36,7 @@ export function IdentifiersPanel({
 }) {
   const may = useMay();
   const { readIdentifiers } = useParticipantActs(studyCode, participant);
-  const [shown, setShown] = useState<IdentifiersDto>();
+  const [shown, setShown] = useState<Shown>();
   const [error, setError] = useState<unknown>();
   const [dialog, setDialog] = useState<'reason' | 'correct'>();
   const [busy, setBusy] = useState(false);
@@ -50,7 +50,7 @@ export function IdentifiersPanel({
     setBusy(true);
     setError(undefined);
     try {
-      setShown(await readIdentifiers());
+      setShown(shownNow(await readIdentifiers()));
     } catch (problem) {
       setError(problem);
     } finally {
@@ -70,7 +70,7 @@ export function IdentifiersPanel({
               {rows.map(([field, label]) => (
                 <div key={field} className="contents">
                   <dt className="text-ink-soft">{label}</dt>
-                  <dd className="break-words">{shown[field] ?? '–'}</dd>
+                  <dd className="break-words">{shown.identifiers[field] ?? '–'}</dd>
                 </div>
               ))}
             </dl>
@@ -82,7 +82,7 @@ export function IdentifiersPanel({
                 </Button>
               )}
               <span className="text-sm text-ink-soft">
-                Covered at {formatTime(coverAt(shown).toISOString())}
+                Covers itself at {formatTime(shown.coverAt.toISOString())}
               </span>
             </div>
           </>
@@ -100,7 +100,7 @@ export function IdentifiersPanel({
             </p>
           }
           act="Look"
-          onAct={async ({ reason }) => setShown(await readIdentifiers(reason))}
+          onAct={async ({ reason }) => setShown(shownNow(await readIdentifiers(reason)))}
           onClose={() => setDialog(undefined)}
         />
       )}
@@ -108,7 +108,7 @@ export function IdentifiersPanel({
         <CorrectIdentifiersDialog
           studyCode={studyCode}
           participant={participant}
-          shown={shown}
+          shown={shown.identifiers}
           onClose={() => setDialog(undefined)}
           onDone={() => setShown(undefined)}
         />
@@ -135,18 +135,26 @@ function Covered({ urgent, busy, onLook }: { urgent: boolean; busy: boolean; onL
   );
 }
 
-/** The end of an urgent look, or some minutes from now, whichever is first. */
-function coverAt({ until }: IdentifiersDto): Date {
-  const usual = Date.now() + shownMinutes * 60_000;
-  return new Date(until === null ? usual : Math.min(Date.parse(until), usual));
+interface Shown {
+  identifiers: IdentifiersDto;
+  coverAt: Date;
 }
 
-function useCoveredLater(shown: IdentifiersDto | undefined, cover: () => void) {
+/** Covered at the end of an urgent look, or some minutes from now, whichever is first. */
+function shownNow(identifiers: IdentifiersDto): Shown {
+  const usual = Date.now() + shownMinutes * 60_000;
+  const { until } = identifiers;
+  return { identifiers, coverAt: new Date(until === null ? usual : Math.min(Date.parse(until), usual)) };
+}
+
+function useCoveredLater(shown: Shown | undefined, cover: () => void) {
+  const latest = useRef(cover);
+  useEffect(() => {
+    latest.current = cover;
+  });
   useEffect(() => {
     if (shown === undefined) return undefined;
-    const timer = setTimeout(cover, Math.max(0, coverAt(shown).getTime() - Date.now()));
+    const timer = setTimeout(() => latest.current(), Math.max(0, shown.coverAt.getTime() - Date.now()));
     return () => clearTimeout(timer);
-    // A new look starts the time anew; the callback is the same act at each render.
-    // eslint-disable-next-line react-hooks/exhaustive-deps
   }, [shown]);
 }

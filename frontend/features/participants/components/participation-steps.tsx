@@ -25,10 +25,6 @@ export function ParticipationSteps({ studyCode, participant, allocated }: Partic
     ...(may('assign', 'Participant', participant) ? { place: 'Assign the next place' } : {}),
   };
   const close = () => setShown(undefined);
-  const done = (words: string) => {
-    close();
-    say(words);
-  };
 
   return (
     <Card title="Taking part" flush>
@@ -53,7 +49,7 @@ export function ParticipationSteps({ studyCode, participant, allocated }: Partic
           studyCode={studyCode}
           participant={participant}
           onClose={close}
-          onDone={() => done(`${participant.code}: criteria confirmed`)}
+          onDone={() => say(`${participant.code}: criteria confirmed`)}
         />
       )}
       {shown === 'place' && (
@@ -61,7 +57,7 @@ export function ParticipationSteps({ studyCode, participant, allocated }: Partic
           studyCode={studyCode}
           participant={participant}
           onClose={close}
-          onDone={() => done(`${participant.code}: place assigned`)}
+          onDone={() => say(`${participant.code}: place assigned`)}
         />
       )}
     </Card>

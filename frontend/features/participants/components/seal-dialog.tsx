@@ -70,7 +70,7 @@ export function SealDialog({ studyCode, sequences, sites, onClose }: SealDialogP
         label="Places for each site"
         required
         inputMode="numeric"
-        className="w-44"
+        className="w-64"
         value={slots}
         onChange={(event) => setSlots(event.target.value.trim())}
         help={slotsPerSite > 0 ? `${slotsPerSite * sites} in all` : 'More than will be needed'}

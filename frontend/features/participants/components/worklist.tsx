@@ -5,9 +5,7 @@ import { Button } from '#frontend/components/button.tsx';
 import { Card } from '#frontend/components/card.tsx';
 import { Caution } from '#frontend/components/caution.tsx';
 import { DataTable, type Column } from '#frontend/components/data-table.tsx';
-import { StateMark } from '#frontend/components/pen-mark.tsx';
 import { worklistQuery } from '../api/allocation.ts';
-import { participantMarks } from '../model/participant-words.ts';
 
 const columns = (studyCode: string): Column<WorklistItemDto>[] => [
   {
@@ -19,7 +17,6 @@ const columns = (studyCode: string): Column<WorklistItemDto>[] => [
     ),
   },
   { header: 'Site', cell: ({ siteCode }) => siteCode },
-  { header: 'State', cell: ({ state }) => <StateMark state={participantMarks[state]} word={state} /> },
   { header: 'Period', numeric: true, cell: ({ period }) => period },
   {
     header: 'To give',
