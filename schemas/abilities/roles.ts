@@ -1,5 +1,5 @@
 import type { Role } from '../vocabulary/roles.ts';
-import type { AppRule, MembershipFacts } from './ability.ts';
+import type { AppRule, MembershipFacts } from './rule.ts';
 
 /**
  * Who may do what: the table of the product description, one function a role, read aloud.
