@@ -65,6 +65,15 @@ export interface CorrectEntryBody extends SaveEntryBody {
   reason: string;
 }
 
+/** What completion asks is answered with a reason: one more reading that was not taken, a check that could not run. */
+export const completeEntryBody = {
+  ...object,
+  properties: { confirmations: { type: 'array', maxItems: 50, items: confirmation } },
+} as const;
+export interface CompleteEntryBody {
+  confirmations?: { checkId: string; reason: string }[];
+}
+
 export const emptyBody = { ...object, properties: {} } as const;
 
 export const openEntryBody = {

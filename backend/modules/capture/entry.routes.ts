@@ -1,12 +1,13 @@
 import type { Request, Response } from 'express';
 import {
   correctEntryBody,
-  emptyBody,
+  completeEntryBody,
   entryDto,
   openEntryBody,
   openLogEntryBody,
   saveEntryBody,
   voidEntryBody,
+  type CompleteEntryBody,
   type CorrectEntryBody,
   type OpenEntryBody,
   type OpenLogEntryBody,
@@ -161,8 +162,8 @@ export function declareEntryRoutes({ route }: RouteTable, { orm: { em } }: Deps)
     'Complete an entry',
     'complete',
     ['entry-completed'],
-    emptyBody,
-    (_request, id, seen, key) => completeEntry(em, id, seen, key),
+    completeEntryBody,
+    (request, id, seen, key) => completeEntry(em, id, seen, request.body as CompleteEntryBody, key),
   );
   change(
     'corrections',

@@ -94,7 +94,8 @@ export async function openLogEntry(
     { kind: 'entry-opened', subject: (row: Entry) => aboutEntry(row) },
     async (tx) => {
       await assertStudyOpen(tx);
-      await assertConsented(tx, participantId);
+      // Adverse events are followed up after a withdrawal too, where the participant allowed it (CP-03).
+      await assertConsented(tx, participantId, { safetyFollowUp: instrumentKey === 'adverse-event' });
       return tx.create(EntrySchema, {
         ...facts,
         state: 'open',

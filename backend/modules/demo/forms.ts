@@ -61,7 +61,13 @@ export const roomForm = (chance: Chance, day: string): Filled => ({
   '/roomTemperature': typed(chance.around(22.6, 0.5), 1),
   '/humidity': Math.round(chance.around(38, 5)),
   '/plethysmograph': 'unit 2',
+  '/serialNumber': 'PL-0002',
   '/calibratedUntil': '2027-12-31',
+  '/gain': 'x5',
+  '/calibrationStep': 1,
+  '/deflectionBefore': 250,
+  '/deflectionAfter': Math.round(chance.around(248, 2)),
+  '/transducerZeroed': true,
 });
 
 /** Triplicate around a mean pressure: a third of the pulse above diastolic. */
@@ -97,6 +103,9 @@ export function pressuresForm(chance: Chance, meanPressure: number): Filled {
 /** Blood with a haematocrit and a plasma viscosity; haemoglobin goes with the cells. */
 export function bloodForm(chance: Chance, haematocrit: number, plasmaViscosity: number): Filled {
   const tube = (): Typed => typed(haematocrit + chance.around(0, 0.003), 3);
+  const tubes = [tube(), tube()];
+  // A third tube when the two differ by more than 0.01, as at the bench.
+  if (Math.abs(tubes[0]!.value - tubes[1]!.value) > 0.01) tubes.push(typed(haematocrit, 3));
   return {
     '/posture': 'supine',
     '/minutesInPosture': 25,
@@ -109,7 +118,7 @@ export function bloodForm(chance: Chance, haematocrit: number, plasmaViscosity: 
     '/haematocritMethod': 'microhaematocrit',
     '/spinMinutes': 5,
     '/secondSpin': true,
-    ...readings('/haematocritTubes', [tube(), tube()]),
+    ...readings('/haematocritTubes', tubes),
     '/haemoglobin': typed(haematocrit * chance.around(33.7, 0.4), 1),
     '/plasmaViscosity': typed(plasmaViscosity, 2),
     '/viscosityTemperature': 37,
@@ -165,7 +174,7 @@ export const exchangeForm = (dilution: boolean): Filled => ({
 export const guessForm = (chance: Chance, period: number): Filled => ({
   '/respondent': 'participant',
   '/period': period,
-  '/guess': chance.pick(['intervention', 'control', 'unsure']),
+  '/guess': chance.pick(['intervention', 'control', 'do-not-know']),
   '/certainty': Math.round(chance.even() * 60),
   '/reason': ['felt-different'],
 });

@@ -123,7 +123,7 @@ async function test(
   await coordinator.fill(
     visitId,
     'exercise-after',
-    gap ? { ...last, '/gate': { missing: 'not-recorded' } } : last,
+    gap ? { ...last, '/gate': { missing: 'not-done' } } : last,
     { complete: !(number === 5 && key === 'second-test') },
   );
   if (number === 5 && key === 'second-test') return;

@@ -207,8 +207,8 @@ function blockOf(chance: Chance, logFlow: number, lost: boolean) {
   const kept = Object.entries(form).filter(([address]) => !address.startsWith('/flow'));
   return {
     ...Object.fromEntries(kept),
-    '/flowRight': { missing: 'equipment-failed' },
-    '/flowLeft': { missing: 'equipment-failed' },
+    '/flowRight': { missing: 'equipment-failure' },
+    '/flowLeft': { missing: 'equipment-failure' },
   };
 }
 

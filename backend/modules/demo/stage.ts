@@ -43,7 +43,7 @@ export class Player {
   async fill(visitId: string, stepKey: string, values: Filled, { complete = true } = {}): Promise<string> {
     const { entry } = await this.does((em) => openStepEntry(em, visitId, stepKey));
     const saved = await this.#save(stepKey, entry, values);
-    if (complete) await this.does((em) => completeEntry(em, entry.id, saved, null));
+    if (complete) await this.does((em) => completeEntry(em, entry.id, saved, {}, null));
     return entry.id;
   }
 

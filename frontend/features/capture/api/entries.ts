@@ -1,5 +1,5 @@
 import { queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
-import type { EntryDto, HistoryLineDto, Operation } from '#schemas/api/capture.ts';
+import type { CompleteEntryBody, EntryDto, HistoryLineDto, Operation } from '#schemas/api/capture.ts';
 import type { InstrumentSchema } from '#schemas/instruments/instrument.ts';
 import { api } from '../../../lib/api.ts';
 
@@ -50,7 +50,7 @@ export function useOpenEntry(study: string, visitId: string) {
 }
 
 export type EntryAct =
-  | { path: 'completion'; body: Record<string, never> }
+  | { path: 'completion'; body: CompleteEntryBody }
   | { path: 'voiding'; body: { reason: string } }
   | { path: 'corrections'; body: { operations: Operation[]; reason: string } };
 

@@ -18,6 +18,8 @@ import { say } from '../../../lib/notices.ts';
 import { useMay } from '../../../lib/session/ability.ts';
 import { useActing } from '../../../lib/session/session.ts';
 import { instrumentQuery, useEntryAct, type InstrumentVersion } from '../api/entries.ts';
+import { laidOver } from '../model/laid-over.ts';
+import { CompletionAnswers } from './completion-answers.tsx';
 import { ConflictDialog } from './conflict-dialog.tsx';
 import { HistoryDialog } from './history-dialog.tsx';
 import { SaveLine } from './save-line.tsx';
@@ -69,6 +71,9 @@ function LoadedEditor({
   const editing = (entry.state === 'open' && own) || correction !== null;
   const findings = [...entry.findings, ...asFindings(state.refused)];
 
+  const unsaved = correction === null ? saver.unsaved() : [...correction.values()];
+  const shown = laidOver({ ...entry.values, ...entry.derived }, unsaved);
+
   const handleChange = (operation: Operation): void => {
     if (correction === null) handleOperation(operation);
     else setCorrection(new Map(correction).set(keyOf(operation), operation));
@@ -95,10 +100,18 @@ function LoadedEditor({
       </header>
       <div className="flex flex-col gap-4 p-4">
         {act.error !== null && <ErrorSummary error={act.error} />}
+        {entry.state === 'open' && (
+          <CompletionAnswers
+            error={act.error}
+            onAnswer={(confirmations) =>
+              act.mutate({ revision: state.revision, path: 'completion', body: { confirmations } })
+            }
+          />
+        )}
         <InstrumentForm
           schema={version.schema}
           compiled={compiled}
-          values={{ ...entry.values, ...entry.derived }}
+          values={shown}
           onOperation={handleChange}
           findings={findings}
           onConfirm={handleConfirm}

@@ -94,6 +94,16 @@ export class EntrySaver {
     this.#schedule(quiet);
   }
 
+  /** What is shown here and not stored there: waiting, in flight, turned away, or in conflict. */
+  unsaved(): Operation[] {
+    return [
+      ...this.#state.refused.flatMap(({ pointer }) => this.#last.get(pointer) ?? []),
+      ...this.#state.conflicts.map(({ mine }) => mine),
+      ...(this.#flight?.operations ?? []),
+      ...this.#waiting.values(),
+    ];
+  }
+
   /** What was last entered here at an address. */
   lastAt(address: string): Operation | undefined {
     return this.#last.get(address);
