@@ -18,7 +18,7 @@ const line = {
 const optionalLine = { anyOf: [{ type: 'null' }, line] } as const;
 const optionalDate = { anyOf: [{ type: 'null' }, date] } as const;
 
-export const identifiersBody = {
+const identifiersBody = {
   ...object,
   required: ['name', 'birthDate'],
   properties: {
@@ -141,13 +141,13 @@ export interface SealAllocationBody {
   slotsPerSite: number;
 }
 
-export const openEmergencyBody = {
+/** Signed by the password, with a reason: an emergency opening, and asking for the unblinding. */
+export const signedReasonBody = {
   ...object,
   required: ['reason', 'password'],
   properties: { reason, password },
 } as const;
-export type OpenEmergencyBody = FromSchema<typeof openEmergencyBody>;
-export const requestUnblindingBody = openEmergencyBody;
+export type SignedReasonBody = FromSchema<typeof signedReasonBody>;
 export const confirmUnblindingBody = {
   ...object,
   required: ['password'],
@@ -176,11 +176,6 @@ const conditionsProperties = {
       properties: { period: { type: 'integer' }, condition: labelled },
     },
   },
-} as const;
-export const conditionsDto = {
-  ...object,
-  required: ['sequence', 'periods'],
-  properties: conditionsProperties,
 } as const;
 
 /** The blinded get the place and that it is filled, nothing else. */
@@ -287,7 +282,7 @@ export const participantDto = {
   },
 } as const;
 
-export interface SealedListDto {
+interface SealedListDto {
   sealedAt: string;
   sealedBy: string;
   commitment: string;

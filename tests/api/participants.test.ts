@@ -4,7 +4,7 @@ import type { ParticipantDto } from '#schemas/api/participants.ts';
 import { parseParticipantCode } from '#schemas/participants/participant-code.ts';
 import { whatCodeTells } from '#schemas/participants/telling-code.ts';
 import { act } from '#backend/database/act.ts';
-import { assertConsented, recordConsent } from '#backend/modules/participants/index.ts';
+import { assertConsented, recordCompletion, recordConsent } from '#backend/modules/participants/index.ts';
 import { acting, theSystem } from '#tests/support/acting.ts';
 import { Client, type Answer } from '#tests/support/client.ts';
 import {
@@ -415,6 +415,21 @@ describe('consent, eligibility and withdrawal', () => {
         values: { 'participant/eligibleOn': today },
       },
     ]);
+  });
+
+  it('ends as planned once consented, and not after a withdrawal', async () => {
+    const participant = await enrol(running, running.sites[0]!);
+    await expect(inAct((tx) => recordCompletion(tx, participant.id))).rejects.toMatchObject({ status: 409 });
+    await consent(server, running.study, participant);
+    await inAct((tx) => recordCompletion(tx, participant.id));
+    const done = (await get(coordinator.client, participant.id)).body;
+    expect(done.state).toBe('completed');
+    const body = { reason: 'own wish', withdrawnOn: today, earlierData: 'kept', safetyFollowUp: false };
+    const later = await coordinator.client.post(`${path}/${participant.id}/withdrawal`, body, {
+      ifMatch: done.revision,
+    });
+    expect(later.status).toBe(200);
+    await expect(inAct((tx) => recordCompletion(tx, participant.id))).rejects.toMatchObject({ status: 409 });
   });
 
   // proves CP-03

@@ -67,7 +67,6 @@ export const EmergencyOpeningSchema = defineEntity({
     reason: p.text(),
   },
 });
-export type EmergencyOpening = InferEntity<typeof EmergencyOpeningSchema>;
 audited(EmergencyOpeningSchema, {
   subject: 'emergency-opening',
   chain: 'study',

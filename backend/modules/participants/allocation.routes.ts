@@ -3,15 +3,14 @@ import {
   allocationDto,
   confirmUnblindingBody,
   emergencyOpeningDto,
-  openEmergencyBody,
+  signedReasonBody,
   openedAllocationDto,
   participantDto,
-  requestUnblindingBody,
   sealAllocationBody,
   unblindingDto,
   worklistItemDto,
   type ConfirmUnblindingBody,
-  type OpenEmergencyBody,
+  type SignedReasonBody,
   type SealAllocationBody,
 } from '#schemas/api/participants.ts';
 import type { Deps } from '#backend/http/deps.ts';
@@ -101,12 +100,12 @@ export function declareAllocationRoutes({ route }: RouteTable, { orm: { em }, se
     path: `${study}/participants/:participantId/emergency-opening`,
     summary: "Open one participant's condition in an emergency",
     gate: ['read', 'Participant'],
-    body: openEmergencyBody,
+    body: signedReasonBody,
     responds: { status: 200, body: emergencyOpeningDto },
     acts: ['allocation-opened', 'signature-refused'],
     handler: async (request, response) => {
       const id = idParameter(request, 'participantId');
-      response.json(await openInEmergency(em, id, request.body as OpenEmergencyBody));
+      response.json(await openInEmergency(em, id, request.body as SignedReasonBody));
     },
   });
 }
@@ -134,11 +133,11 @@ export function declareUnblindingRoutes({ route }: RouteTable, { orm: { em } }: 
     path: `${study}/unblinding`,
     summary: 'Ask for the unblinding of the locked study',
     gate: ['unblind', 'Study'],
-    body: requestUnblindingBody,
+    body: signedReasonBody,
     responds: { status: 201, body: unblindingDto },
     acts: ['unblinding-requested', 'signature-refused'],
     handler: async (request, response) => {
-      await requestUnblinding(em, request.body as OpenEmergencyBody);
+      await requestUnblinding(em, request.body as SignedReasonBody);
       await answer(response, 201);
     },
   });

@@ -1,5 +1,5 @@
 import type { EntityManager } from '@mikro-orm/postgresql';
-import type { EmergencyOpeningDto, OpenEmergencyBody } from '#schemas/api/participants.ts';
+import type { EmergencyOpeningDto, SignedReasonBody } from '#schemas/api/participants.ts';
 import { act } from '#backend/database/act.ts';
 import { currentPersonId } from '#backend/http/actor.ts';
 import { authorize } from '#backend/http/authorize.ts';
@@ -18,7 +18,7 @@ import { aboutParticipant } from './participant.service.ts';
 export async function openInEmergency(
   em: EntityManager,
   participantId: string,
-  { reason, password }: OpenEmergencyBody,
+  { reason, password }: SignedReasonBody,
 ): Promise<EmergencyOpeningDto> {
   const participant = await readableParticipant(em, participantId);
   const { id, studyId, siteId, code } = participant;

@@ -8,6 +8,7 @@ export { assignAllocation } from './assign-allocation.ts';
 export { confirmEligibility, enrolParticipant } from './participant.service.ts';
 export { sealAllocation } from './seal-allocation.ts';
 export { confirmUnblinding, requestUnblinding } from './unblinding.service.ts';
+export { recordCompletion } from './completion.ts';
 export { conditionOf } from './conditions.ts';
 export { assertConsented, recordConsent } from './consent.ts';
 

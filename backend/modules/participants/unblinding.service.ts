@@ -1,5 +1,5 @@
 import { LockMode, type EntityManager } from '@mikro-orm/postgresql';
-import type { ConfirmUnblindingBody, OpenEmergencyBody, UnblindingDto } from '#schemas/api/participants.ts';
+import type { ConfirmUnblindingBody, SignedReasonBody, UnblindingDto } from '#schemas/api/participants.ts';
 import { act } from '#backend/database/act.ts';
 import { currentPersonId, currentStudyId } from '#backend/http/actor.ts';
 import { authorize } from '#backend/http/authorize.ts';
@@ -16,7 +16,7 @@ const aboutUnblinding = ({ id }: Unblinding) => ({ type: 'unblinding', id });
 /** Asks for the planned unblinding of a locked study; another person has to confirm it (RB-08). */
 export async function requestUnblinding(
   em: EntityManager,
-  { reason, password }: OpenEmergencyBody,
+  { reason, password }: SignedReasonBody,
 ): Promise<Unblinding> {
   assertLocked(await studyToUnblind(em));
   await confirmPassword(em, currentPersonId(), password);
