@@ -1,5 +1,5 @@
 import { afterEach, describe, expect, it, vi } from 'vitest';
-import { api, ApiProblem, OfflineError, queryString } from './api.ts';
+import { api, apiFile, ApiProblem, OfflineError, queryString } from './api.ts';
 
 const answer = (status: number, body: unknown, headers: Record<string, string> = {}) =>
   new Response(body === undefined ? null : JSON.stringify(body), {
@@ -51,6 +51,13 @@ describe('api', () => {
     await api('/sources', { method: 'POST', body: new FormData() });
     expect(upload().headers.get('X-Vesselry')).toBe('1');
     expect(upload().headers.get('Content-Type')).toBeNull();
+
+    const file = new Blob(['time,flow'], { type: 'text/csv' });
+    const bare = asked(answer(201, {}));
+    await api('/sources', { method: 'POST', body: file });
+    expect(bare().init?.body).toBe(file);
+    expect(bare().headers.get('X-Vesselry')).toBe('1');
+    expect(bare().headers.get('Content-Type')).toBe('text/csv');
   });
 
   it('throws the refusal with its slug, its fields and what else was sent', async () => {
@@ -83,6 +90,16 @@ describe('api', () => {
     stop.abort();
     asked(new DOMException('stopped', 'AbortError'));
     await expect(api('/entries/1', { signal: stop.signal })).rejects.toMatchObject({ name: 'AbortError' });
+  });
+});
+
+describe('apiFile', () => {
+  it('gives the bytes of an answer, and throws the refusal of one that is refused', async () => {
+    asked(new Response('PK', { status: 200, headers: { 'Content-Type': 'application/zip' } }));
+    expect(await (await apiFile('/exports/1/download', { method: 'POST', body: {} })).text()).toBe('PK');
+
+    asked(answer(409, { detail: 'It was downloaded already.' }));
+    await expect(apiFile('/exports/1/download')).rejects.toMatchObject({ status: 409 });
   });
 });
 

@@ -53,7 +53,7 @@ export class OfflineError extends Error {
 
 export interface RequestOptions {
   method?: 'GET' | 'POST' | 'PUT' | 'PATCH' | 'DELETE';
-  /** Sent as JSON, except `FormData`, which is sent as an upload. */
+  /** Sent as JSON, except `FormData` and `Blob`, which are sent as uploads; a `Blob` is the bare file. */
   body?: unknown;
   /** The revision or ETag seen; a stale one is answered with 412. */
   ifMatch?: number | string | undefined;
@@ -74,21 +74,32 @@ export interface Answer<T> {
  * @throws ApiProblem when the server refuses, OfflineError when nobody answers, AbortError when cancelled
  */
 export async function api<T>(path: string, options: RequestOptions = {}): Promise<Answer<T>> {
-  const response = await send(path, options);
-  noteContact();
-  if (!response.ok) throw new ApiProblem(response.status, await problemBody(response));
+  const response = await accepted(path, options);
   const etag = response.headers.get('ETag') ?? undefined;
   if (response.status === 204 || response.headers.get('Content-Length') === '0')
     return { data: undefined as T, etag };
   return { data: (await response.json()) as T, etag };
 }
 
+/** Asks the server for a file. Throws as `api` does. */
+export const apiFile = async (path: string, options: RequestOptions = {}): Promise<Blob> =>
+  (await accepted(path, options)).blob();
+
+async function accepted(path: string, options: RequestOptions): Promise<Response> {
+  const response = await send(path, options);
+  noteContact();
+  if (!response.ok) throw new ApiProblem(response.status, await problemBody(response));
+  return response;
+}
+
 async function send(path: string, { method = 'GET', body, ifMatch, idempotencyKey, signal }: RequestOptions) {
   const headers = new Headers({ Accept: 'application/json' });
-  const upload = body instanceof FormData;
+  const file = body instanceof Blob;
+  const upload = file || body instanceof FormData;
   // A header no foreign form can send marks uploads; everything else that writes is JSON (WS-05).
   if (upload) headers.set('X-Vesselry', '1');
-  else if (method !== 'GET') headers.set('Content-Type', 'application/json');
+  if (file) headers.set('Content-Type', body.type);
+  if (!upload && method !== 'GET') headers.set('Content-Type', 'application/json');
   if (ifMatch !== undefined) headers.set('If-Match', typeof ifMatch === 'number' ? `"${ifMatch}"` : ifMatch);
   if (idempotencyKey !== undefined) headers.set('Idempotency-Key', idempotencyKey);
   const payload = upload ? body : body === undefined ? undefined : JSON.stringify(body);
