@@ -35,6 +35,35 @@ export const studyPages: RouteObject[] = [
   page('allocation', async () => ({
     Component: (await import('#frontend/pages/allocation-page.tsx')).AllocationPage,
   })),
+  page('verification', async () => ({
+    Component: (await import('#frontend/pages/verification-page.tsx')).VerificationPage,
+  })),
+  page('verification/:visitId', async () => ({
+    Component: (await import('#frontend/pages/verification-visit-page.tsx')).VerificationVisitPage,
+  })),
+  page('queries', async () => ({
+    Component: (await import('#frontend/pages/queries-page.tsx')).QueriesPage,
+  })),
+  page('queries/:queryId', async () => ({
+    Component: (await import('#frontend/pages/query-page.tsx')).QueryPage,
+  })),
+  page('plans', async () => ({ Component: (await import('#frontend/pages/plans-page.tsx')).PlansPage })),
+  page('plans/:planId', async () => ({
+    Component: (await import('#frontend/pages/plan-page.tsx')).PlanPage,
+  })),
+  page('plans/signed/:versionId', async () => ({
+    Component: (await import('#frontend/pages/plan-page.tsx')).SignedPlanPage,
+  })),
+  page('exports', async () => ({
+    Component: (await import('#frontend/pages/exports-page.tsx')).ExportsPage,
+  })),
+  page('exports/:exportId', async () => ({
+    Component: (await import('#frontend/pages/export-page.tsx')).ExportPage,
+  })),
+  page('records', async () => ({
+    Component: (await import('#frontend/pages/records-page.tsx')).RecordsPage,
+  })),
+  page('audit', async () => ({ Component: (await import('#frontend/pages/audit-page.tsx')).AuditPage })),
   page('unblinding', async () => ({
     Component: (await import('#frontend/pages/unblinding-page.tsx')).UnblindingPage,
   })),
@@ -42,6 +71,9 @@ export const studyPages: RouteObject[] = [
 
 /** The administrator's pages, below `/administration/`. */
 export const administrationPages: RouteObject[] = [
+  page('audit', async () => ({
+    Component: (await import('#frontend/pages/system-audit-page.tsx')).SystemAuditPage,
+  })),
   page('people', async () => ({ Component: (await import('#frontend/pages/people-page.tsx')).PeoplePage })),
   page('people/:personId', async () => ({
     Component: (await import('#frontend/pages/person-page.tsx')).PersonPage,
