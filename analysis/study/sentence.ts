@@ -81,7 +81,7 @@ export function answerSentence(
   const word = (key: string): string => labels.get(key) ?? key;
   const [x, y] = plan.conditions ?? ['', ''];
   const subject = plan.conditions ? capital(word(x)) : capital(plan.timePoint);
-  const against = plan.conditions ? ` against ${word(y)}` : ` against ${plan.baselineTimePoint}`;
+  const against = plan.conditions ? ` against ${uncapital(word(y))}` : ` against ${plan.baselineTimePoint}`;
   const mark = main.outcome === 'viscosity' ? 'viscosity' : main.outcome === 'hindrance' ? 'tone' : 'total';
   const parts: SentencePart[] = [
     { text: `${subject}: ${names[main.outcome]} ` },
@@ -105,5 +105,9 @@ export function answerSentence(
   parts.push({ text: verdictWords[verdict], mark: 'verdict' });
   return parts;
 }
+
+/** A label within a sentence; an abbreviation keeps its capitals. */
+const uncapital = (text: string): string =>
+  /^\p{Lu}\p{Ll}/u.test(text) ? text.charAt(0).toLowerCase() + text.slice(1) : text;
 
 const capital = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);

@@ -405,7 +405,7 @@ describe('the main job over HTTP', () => {
     result = (await statistician.client.get<StudyResult>(`${path()}/runs/${run.id}/result`)).body;
     expect(result.flow).toEqual({ allocated: 8, analysed: 8 });
     expect(result.effects[0]!.ratio).toBeLessThan(0.85);
-    expect(result.sentence.map(({ text }) => text).join('')).toContain('Alder blend');
+    expect(result.sentence.map(({ text }) => text).join('')).toContain('Alder blend: forearm vascular resistance');
   }, 120_000);
 
   // proves DX-01, DX-02, DX-13, DX-14, AC-05
