@@ -3,7 +3,7 @@ import { outcomes, type OutcomeKey } from '#analysis/study/study-plan.ts';
 import { outcomeNames } from './words.ts';
 
 /** A paragraph of a readable plan: its heading and its words. */
-export interface PlanLine {
+interface PlanLine {
   heading: string;
   words: string;
 }

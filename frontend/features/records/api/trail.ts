@@ -42,7 +42,7 @@ export const participantIdQuery = (study: string, code: string) =>
     staleTime: Infinity,
   });
 
-export interface ChainCheck {
+interface ChainCheck {
   ok: boolean;
   events: number;
   head: { sequence: number; hash: string } | null;
