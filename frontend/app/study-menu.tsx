@@ -8,7 +8,7 @@ import { useSession } from '../lib/session/session.ts';
 import { inWords } from '../components/error-summary.tsx';
 
 const look =
-  'rounded border border-band-edge bg-band-field px-3 py-1 text-sm text-chalk min-h-8 whitespace-nowrap hover:border-chalk-soft';
+  'rounded border border-band-edge bg-band-field px-3 py-1 text-sm text-chalk min-h-8 whitespace-nowrap uppercase hover:border-chalk-soft';
 
 /** Switches study and role; the band says which one holds. */
 export function StudyMenu() {

@@ -3,6 +3,7 @@ import type { StudyResult } from '#analysis/study/run-study.ts';
 import { Plot } from '../../../components/plot/plot.tsx';
 import type { PlotColours } from '../../../components/plot/plot-colours.ts';
 import type { PlotDrawing } from '../../../components/plot/plot-layout.ts';
+import { formatNumber } from '../../../lib/format/numbers.ts';
 import { percentWords } from '../model/words.ts';
 
 /** A row a participant: the viscosity part from zero, the tone part from where it ends, a mark for the total. */
@@ -37,6 +38,9 @@ export function SplitChart({ result, name }: { result: StudyResult; name: string
   );
 }
 
+/** Round percentages, placed where their logarithms fall. */
+const tickPercentages = [-60, -50, -40, -30, -20, -10, 0, 10, 20, 30, 50, 80];
+
 function drawing(
   participants: StudyResult['participants'],
   detectable: number | null,
@@ -47,7 +51,6 @@ function drawing(
     viscosity: rheological ?? 0,
     tone: geometric ?? total,
   }));
-  const ticks = [-0.7, -0.5, -0.3, -0.1, 0, 0.1, 0.3, 0.5];
   return {
     traces: [
       {
@@ -84,7 +87,13 @@ function drawing(
       barmode: 'overlay',
       showlegend: true,
       legend: { orientation: 'h', y: 1.06 },
-      xaxis: { tickvals: ticks, ticktext: ticks.map((tick) => percentWords(tick)), zeroline: true },
+      xaxis: {
+        tickvals: tickPercentages.map((percent) => Math.log1p(percent / 100)),
+        ticktext: tickPercentages.map(
+          (percent) => `${percent > 0 ? '+' : ''}${formatNumber(percent, { decimals: 0 })} %`,
+        ),
+        zeroline: true,
+      },
       yaxis: { autorange: 'reversed', automargin: true, tickfont: { size: 11 } },
       ...(detectable === null
         ? {}
