@@ -15,6 +15,15 @@ const page = (path: string, load: () => Promise<LoadedPage>): RouteObject => ({ 
 /** The pages of a study, below `/studies/:studyCode/`: one line a page, each a file in `frontend/pages`. */
 export const studyPages: RouteObject[] = [
   page('study', async () => ({ Component: (await import('#frontend/pages/study-page.tsx')).StudyPage })),
+  page('instruments', async () => ({
+    Component: (await import('#frontend/pages/instruments-page.tsx')).InstrumentsPage,
+  })),
+  page('instruments/:instrumentKey', async () => ({
+    Component: (await import('#frontend/pages/instrument-page.tsx')).InstrumentPage,
+  })),
+  page('instruments/:instrumentKey/draft', async () => ({
+    Component: (await import('#frontend/pages/drafting-table-page.tsx')).DraftingTablePage,
+  })),
   page('now', async () => ({ Component: (await import('#frontend/pages/now-page.tsx')).NowPage })),
   page('visits', async () => ({ Component: (await import('#frontend/pages/visits-page.tsx')).VisitsPage })),
   page('cuts', async () => ({ Component: (await import('#frontend/pages/cuts-page.tsx')).CutsPage })),

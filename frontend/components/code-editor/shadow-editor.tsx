@@ -25,6 +25,8 @@ export interface CodeEditorProps {
   readOnly?: boolean;
   /** CSS length. */
   height?: string;
+  /** Brings the value at a pointer into sight and puts the cursor there; a new object goes there again. */
+  goTo?: { pointer: string } | undefined;
 }
 
 const parseErrors = jsonParseLinter();
@@ -38,6 +40,7 @@ export function ShadowEditor({
   complete,
   readOnly = false,
   height = '60dvh',
+  goTo,
 }: CodeEditorProps) {
   const host = useRef<HTMLDivElement>(null);
   const editor = useRef<EditorView>(null);
@@ -83,6 +86,18 @@ export function ShadowEditor({
     if (!view || view.state.doc.toString() === value) return;
     view.dispatch({ changes: { from: 0, to: view.state.doc.length, insert: value } });
   }, [value]);
+
+  useEffect(() => {
+    const view = editor.current;
+    if (!view || !goTo) return;
+    const place = pointerRange(view.state.doc.toString(), goTo.pointer);
+    if (!place) return;
+    view.dispatch({
+      selection: { anchor: place.from },
+      effects: EditorView.scrollIntoView(place.from, { y: 'center' }),
+    });
+    view.focus();
+  }, [goTo]);
 
   return <div ref={host} className="overflow-hidden rounded border border-edge" style={{ height }} />;
 }
