@@ -73,9 +73,9 @@ function serveClient(app: Express): void {
     express.static(join(clientFolder, 'assets'), {
       immutable: true,
       maxAge: '1y',
-      fallthrough: false,
       index: false,
     }),
+    noSuchRoute,
   );
   app.use(express.static(clientFolder, { index: false, maxAge: 0 }));
   app.get('/*path', (_request, response) => {
