@@ -1,15 +1,11 @@
-import type { Response } from 'express';
 import {
   allocationDto,
-  confirmUnblindingBody,
   emergencyOpeningDto,
   signedReasonBody,
   openedAllocationDto,
   participantDto,
   sealAllocationBody,
-  unblindingDto,
   worklistItemDto,
-  type ConfirmUnblindingBody,
   type SignedReasonBody,
   type SealAllocationBody,
 } from '#schemas/api/participants.ts';
@@ -22,7 +18,6 @@ import { assignAllocation } from './assign-allocation.ts';
 import { openInEmergency } from './emergency-opening.ts';
 import { presentParticipant } from './participant.presenter.ts';
 import { sealAllocation } from './seal-allocation.ts';
-import { confirmUnblinding, readUnblinding, requestUnblinding } from './unblinding.service.ts';
 
 const study = '/studies/:studyCode';
 const nothing = { type: 'object', additionalProperties: false } as const;
@@ -106,53 +101,6 @@ export function declareAllocationRoutes({ route }: RouteTable, { orm: { em }, se
     handler: async (request, response) => {
       const id = idParameter(request, 'participantId');
       response.json(await openInEmergency(em, id, request.body as SignedReasonBody));
-    },
-  });
-}
-
-/** The planned unblinding of a study by two people. */
-export function declareUnblindingRoutes({ route }: RouteTable, { orm: { em } }: Deps): void {
-  const answer = async (response: Response, status: number): Promise<void> => {
-    const present = await readUnblinding(em.fork());
-    if (present.request !== null) response.set('ETag', etag(present.request.revision));
-    response.status(status).json(present);
-  };
-
-  route({
-    method: 'get',
-    path: `${study}/unblinding`,
-    summary: 'How far the unblinding of the study is',
-    gate: ['read', 'Unblinding'],
-    responds: { status: 200, body: unblindingDto },
-    acts: null,
-    handler: async (_request, response) => answer(response, 200),
-  });
-
-  route({
-    method: 'post',
-    path: `${study}/unblinding`,
-    summary: 'Ask for the unblinding of the locked study',
-    gate: ['unblind', 'Study'],
-    body: signedReasonBody,
-    responds: { status: 201, body: unblindingDto },
-    acts: ['unblinding-requested', 'signature-refused'],
-    handler: async (request, response) => {
-      await requestUnblinding(em, request.body as SignedReasonBody);
-      await answer(response, 201);
-    },
-  });
-
-  route({
-    method: 'post',
-    path: `${study}/unblinding/confirmation`,
-    summary: 'Confirm the unblinding as the second person',
-    gate: ['unblind', 'Study'],
-    body: confirmUnblindingBody,
-    responds: { status: 200, body: unblindingDto },
-    acts: ['unblinding-confirmed', 'signature-refused'],
-    handler: async (request, response) => {
-      await confirmUnblinding(em, ifMatch(request), request.body as ConfirmUnblindingBody);
-      await answer(response, 200);
     },
   });
 }

@@ -17,7 +17,8 @@ import { idParameter, type RouteTable } from '#backend/http/route.ts';
 import type { Participant } from './participant.entity.ts';
 import { presentParticipant, presentParticipants } from './participant.presenter.ts';
 import { listParticipants, participantByCode, readableParticipant } from './participant.queries.ts';
-import { confirmEligibility, enrolParticipant, withdrawParticipant } from './participant.service.ts';
+import { enrolParticipant } from './enrol-participant.ts';
+import { confirmEligibility, withdrawParticipant } from './participant.service.ts';
 
 const participants = '/studies/:studyCode/participants';
 

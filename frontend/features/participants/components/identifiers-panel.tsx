@@ -1,5 +1,5 @@
-import { useEffect, useRef, useState } from 'react';
-import type { IdentifiersDto, ParticipantDto } from '#schemas/api/participants.ts';
+import { useState } from 'react';
+import type { ParticipantDto } from '#schemas/api/participants.ts';
 import { ActDialog } from '#frontend/components/act-dialog.tsx';
 import { Button } from '#frontend/components/button.tsx';
 import { Card } from '#frontend/components/card.tsx';
@@ -10,6 +10,7 @@ import { useMay } from '#frontend/lib/session/ability.ts';
 import { useParticipantActs } from '../api/participants.ts';
 import { CorrectIdentifiersDialog } from './correct-identifiers-dialog.tsx';
 import { IdentifiersReadings } from './identifiers-readings.tsx';
+import { shownNow, useCoveredLater, type Shown } from './use-cover.ts';
 
 const rows = [
   ['name', 'Full name'],
@@ -19,9 +20,6 @@ const rows = [
   ['postcode', 'Postcode'],
   ['recordNumber', 'Record number'],
 ] as const;
-
-/** Minutes after which the panel covers what it shows, so that an unattended screen does not go on telling. */
-const shownMinutes = 5;
 
 /**
  * Who a participant is: covered until asked for, each look an act. What is shown lives in this component only and is
@@ -133,28 +131,4 @@ function Covered({ urgent, busy, onLook }: { urgent: boolean; busy: boolean; onL
       </div>
     </>
   );
-}
-
-interface Shown {
-  identifiers: IdentifiersDto;
-  coverAt: Date;
-}
-
-/** Covered at the end of an urgent look, or some minutes from now, whichever is first. */
-function shownNow(identifiers: IdentifiersDto): Shown {
-  const usual = Date.now() + shownMinutes * 60_000;
-  const { until } = identifiers;
-  return { identifiers, coverAt: new Date(until === null ? usual : Math.min(Date.parse(until), usual)) };
-}
-
-function useCoveredLater(shown: Shown | undefined, cover: () => void) {
-  const latest = useRef(cover);
-  useEffect(() => {
-    latest.current = cover;
-  });
-  useEffect(() => {
-    if (shown === undefined) return undefined;
-    const timer = setTimeout(() => latest.current(), Math.max(0, shown.coverAt.getTime() - Date.now()));
-    return () => clearTimeout(timer);
-  }, [shown]);
 }
