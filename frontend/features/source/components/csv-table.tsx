@@ -1,5 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { Loaded } from '../../../components/states.tsx';
+import { delimiterOf } from '../model/delimiter.ts';
 
 /** Rows that are drawn; a recording may have many thousands. */
 const shownRows = 500;
@@ -13,7 +14,7 @@ export function CsvTable({ id, file, label }: { id: string; file: Blob; label: s
       const text = await file.text();
       return parse(text, {
         bom: true,
-        delimiter: [',', ';', '\t'],
+        delimiter: delimiterOf(text),
         relax_column_count: true,
         relax_quotes: true,
         skip_empty_lines: true,
