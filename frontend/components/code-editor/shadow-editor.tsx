@@ -65,7 +65,8 @@ export function ShadowEditor({
           delay: 500,
         }),
         autocompletion({ override: [(context) => suggestions(context)] }),
-        EditorView.contentAttributes.of({ 'aria-label': label }),
+        // A text that cannot be changed must still be reached, to scroll it with the keyboard.
+        EditorView.contentAttributes.of({ 'aria-label': label, ...(readOnly ? { tabindex: '0' } : {}) }),
         EditorView.editable.of(!readOnly),
         EditorView.lineWrapping,
         EditorView.updateListener.of((update) => {
