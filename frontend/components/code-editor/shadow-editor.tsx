@@ -65,8 +65,8 @@ export function ShadowEditor({
           delay: 500,
         }),
         autocompletion({ override: [(context) => suggestions(context)] }),
-        // A text that cannot be changed must still be reached, to scroll it with the keyboard.
-        EditorView.contentAttributes.of({ 'aria-label': label, ...(readOnly ? { tabindex: '0' } : {}) }),
+        // Said outright, so that a text that cannot be changed is reached too, to scroll it with the keyboard.
+        EditorView.contentAttributes.of({ 'aria-label': label, tabindex: '0' }),
         EditorView.editable.of(!readOnly),
         EditorView.lineWrapping,
         EditorView.updateListener.of((update) => {

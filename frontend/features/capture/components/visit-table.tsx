@@ -25,7 +25,7 @@ export function VisitTable({ study, query }: VisitTableProps) {
       sortKey: 'participant',
       sortValue: ({ participantCode }) => participantCode,
       cell: ({ id, participantCode }) => (
-        <Link to={`/studies/${study}/visits/${id}`} className="font-semibold">
+        <Link to={`/studies/${study}/visits/${id}`} className="font-mono link">
           {participantCode}
         </Link>
       ),
