@@ -15,6 +15,12 @@ const page = (path: string, load: () => Promise<LoadedPage>): RouteObject => ({ 
 /** The pages of a study, below `/studies/:studyCode/`: one line a page, each a file in `frontend/pages`. */
 export const studyPages: RouteObject[] = [
   page('study', async () => ({ Component: (await import('#frontend/pages/study-page.tsx')).StudyPage })),
+  page('protocol', async () => ({
+    Component: (await import('#frontend/pages/protocol-page.tsx')).ProtocolPage,
+  })),
+  page('protocol/draft', async () => ({
+    Component: (await import('#frontend/pages/protocol-draft-page.tsx')).ProtocolDraftPage,
+  })),
   page('instruments', async () => ({
     Component: (await import('#frontend/pages/instruments-page.tsx')).InstrumentsPage,
   })),
@@ -25,6 +31,9 @@ export const studyPages: RouteObject[] = [
     Component: (await import('#frontend/pages/drafting-table-page.tsx')).DraftingTablePage,
   })),
   page('now', async () => ({ Component: (await import('#frontend/pages/now-page.tsx')).NowPage })),
+  page('ribbon', async () => ({
+    Component: (await import('#frontend/pages/ribbon-page.tsx')).RibbonPage,
+  })),
   page('visits', async () => ({ Component: (await import('#frontend/pages/visits-page.tsx')).VisitsPage })),
   page('cuts', async () => ({ Component: (await import('#frontend/pages/cuts-page.tsx')).CutsPage })),
   page('runs', async () => ({ Component: (await import('#frontend/pages/runs-page.tsx')).RunsPage })),

@@ -50,7 +50,7 @@ export function SampleTable({ samples, results, onChange, onLoad, onKeep, derive
           {samples.map((sample, at) => (
             // Samples have no key of their own, and two may have one name.
             <li key={at} className="flex flex-col gap-2 border-t border-rule-soft py-3">
-              <div className="grid items-end gap-3 sm:grid-cols-[minmax(0,1fr)_14rem_auto]">
+              <div className="grid items-end gap-3 lg:grid-cols-[minmax(0,1fr)_14rem_auto]">
                 <TextField
                   label={`Sample ${at + 1}`}
                   value={sample.name}
