@@ -1,5 +1,6 @@
 import { useNavigate } from 'react-router-dom';
 import { roleNames } from '#schemas/vocabulary/roles.ts';
+import { classNames } from '../components/class-names.ts';
 import { Menu, menuLine } from '../components/menu.tsx';
 import { say } from '../lib/notices.ts';
 import { homeOf } from './home.ts';
@@ -8,7 +9,7 @@ import { useSession } from '../lib/session/session.ts';
 import { inWords } from '../components/error-summary.tsx';
 
 const look =
-  'rounded border border-band-edge bg-band-field px-3 py-1 text-sm text-chalk min-h-8 whitespace-nowrap uppercase hover:border-chalk-soft';
+  'rounded border border-band-edge bg-band-field px-3 py-1 text-sm text-chalk min-h-8 whitespace-nowrap hover:border-chalk-soft';
 
 /** Switches study and role; the band says which one holds. */
 export function StudyMenu() {
@@ -17,7 +18,11 @@ export function StudyMenu() {
   const navigate = useNavigate();
   const here = acting ? (acting.studyCode ?? 'Administration') : 'Choose a study';
   return (
-    <Menu label={here} name={`Study: ${here}. Change study or role`} buttonClassName={look}>
+    <Menu
+      label={here}
+      name={`Study: ${here}. Change study or role`}
+      buttonClassName={classNames(look, acting?.studyCode && 'uppercase')}
+    >
       {(close) => (
         <ul>
           {memberships.map((membership) => {

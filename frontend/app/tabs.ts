@@ -35,5 +35,4 @@ export const administrationTabs: readonly Tab[] = [
   { label: 'People', path: 'people', ability: ['manage', 'Person'], key: 'p' },
   { label: 'Studies', path: 'studies', ability: ['manage', 'Study'], key: 's' },
   { label: 'System trail', path: 'audit', ability: ['read', 'AuditEvent'], key: 'a' },
-  { label: 'Health', path: 'health', ability: ['manage', 'Study'], key: 'h' },
 ];

@@ -14,7 +14,7 @@ import { confirmUnblinding, requestUnblinding, sealAllocation } from '../partici
 import { UnblindingSchema } from '../participants/allocation.entity.ts';
 import type { Participant } from '../participants/participant.entity.ts';
 import { lockStudy, openPoints, prepareSignature, signVisit } from '../records/index.ts';
-import type { People } from './cast.ts';
+import { cast, type People } from './cast.ts';
 import { Chance } from './chance.ts';
 import { allocate, at, begin, daysAgo, end, enrol } from './enrol.ts';
 import {
@@ -63,6 +63,8 @@ export async function seedScreepath(
       { code: 'TN', name: 'Tarn Nook', timeZone: 'America/La_Paz' },
     ],
   });
+  const tarnNook = study.sites.get('TN');
+  if (tarnNook) await cast(deps, people.get('cora.tallow'), 'coordinator', study.id, [tarnNook.id]);
   await publishStudy(study, screepath);
   await study.technician.does((em) =>
     sealAllocation(em, deps.settings.identity, { blockSizes: [2, 4], slotsPerSite: 16 }),

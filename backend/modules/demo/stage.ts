@@ -1,7 +1,7 @@
 import { RequestContext, type EntityManager } from '@mikro-orm/postgresql';
 import type { Operation, StampStepBody } from '#schemas/api/capture.ts';
 import type { EntryValue } from '#schemas/instruments/entry-values.ts';
-import { runAs, type Actor } from '#backend/http/actor.ts';
+import { runAs } from '#backend/http/actor.ts';
 import type { Deps } from '#backend/http/deps.ts';
 import { Problem } from '#backend/http/problem.ts';
 import { loadActor } from '#backend/http/session/load-actor.ts';

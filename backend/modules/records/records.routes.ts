@@ -18,6 +18,7 @@ import { PersonSchema } from '../accounts/person.entity.ts';
 import { loadVisit } from '../capture/index.ts';
 import { checkChain } from './check-chain.ts';
 import { lockStudy, openPoints, unlockStudy } from './lock.service.ts';
+import { StudySchema } from '../studies/study.entity.ts';
 import { StudyLockSchema, type StudyLock } from './records.entity.ts';
 import { prepareSignature, signaturesOf, signVisit } from './signature.service.ts';
 import { listTrail } from './trail-list.ts';
@@ -94,7 +95,10 @@ export function declareRecordRoutes({ route }: RouteTable, { orm: { em }, settin
     acts: null,
     handler: async (_request, response) => {
       const rows = await em.find(StudyLockSchema, { studyId: currentStudyId() }, { orderBy: { at: 'desc' } });
-      response.json({ openPoints: await openPoints(em), history: await presentLocks(em, rows) });
+      // What is open matters until the lock; afterwards the lock's own record says what was left open.
+      const running = (await em.findOneOrFail(StudySchema, currentStudyId())).state === 'running';
+      const points = running ? await openPoints(em) : [];
+      response.json({ openPoints: points, history: await presentLocks(em, rows) });
     },
   });
 

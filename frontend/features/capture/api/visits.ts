@@ -1,4 +1,4 @@
-import { queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
+import { infiniteQueryOptions, queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
 import type {
   LiveQuantityDto,
   NoteDeviationBody,
@@ -34,6 +34,21 @@ export const visitsQuery = (study: string, filter: VisitFilter) =>
           { signal },
         )
       ).data.items,
+  });
+
+/** Every visit of the study, two hundred at a time. */
+export const everyVisitQuery = (study: string) =>
+  infiniteQueryOptions({
+    queryKey: [...keys.all(study), 'every'],
+    queryFn: async ({ pageParam, signal }) =>
+      (
+        await api<{ items: VisitDto[]; nextCursor: string | null }>(
+          `/studies/${study}/visits${queryString({ cursor: pageParam, limit: 200 })}`,
+          { signal },
+        )
+      ).data,
+    initialPageParam: '',
+    getNextPageParam: ({ nextCursor }) => nextCursor ?? undefined,
   });
 
 export const runSheetQuery = (study: string, id: string) =>
