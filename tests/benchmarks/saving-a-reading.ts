@@ -1,4 +1,3 @@
-import type { EntryDto } from '#schemas/api/capture.ts';
 import { expectStatus, save } from '../support/capture-builders.ts';
 import { aStudyWithEntries, type StudyWithEntries } from './a-study-with-entries.ts';
 import { startBareRoutes } from './bare-routes.ts';
