@@ -74,9 +74,8 @@ const measureRow = (measure: VisitMeasure): Row => ({
   label: quantityLabels[measure.quantity],
   timePoint: measure.timePoint,
   unblinding: measure.unblinding,
-  ...(measure.value === null
-    ? { waiting: `waits for ${measure.waitingFor}` }
-    : { value: measure.value, unit: measure.unit }),
+  unit: measure.unit,
+  ...(measure.value === null ? { waiting: `waits for ${measure.waitingFor}` } : { value: measure.value }),
 });
 
 /** Nothing when the time point does not measure what the quantity needs; `before` holds the rows listed earlier. */

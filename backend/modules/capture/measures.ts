@@ -37,13 +37,14 @@ export function visitMeasures(type: VisitType, steps: ReadonlyMap<string, StepVa
     timePoint: measure.timePoint,
     quantity: measure.quantity,
     unit: measuredQuantities[measure.quantity],
-    ...valueOf(measure, steps),
+    ...valueOf(measure, type, steps),
     unblinding: isUnblinding(measure, steps),
   }));
 }
 
 function valueOf(
   measure: Measure,
+  { runSheet }: VisitType,
   steps: ReadonlyMap<string, StepValues>,
 ): Pick<VisitMeasure, 'value' | 'waitingFor'> {
   const numbers: number[] = [];
@@ -51,7 +52,10 @@ function valueOf(
     const taken = steps.get(step);
     const field = taken?.compiled.field(pointer);
     const value = taken && field && fieldNumber(taken.compiled, field, taken.values);
-    if (value === undefined) return { value: null, waitingFor: field?.label ?? step };
+    if (value === undefined) {
+      const label = runSheet.find(({ key }) => key === step)?.label;
+      return { value: null, waitingFor: field?.label ?? label ?? step };
+    }
     numbers.push(value);
   }
   return { value: numbers.reduce((sum, value) => sum + value, 0) / numbers.length, waitingFor: null };

@@ -29,7 +29,7 @@ export function LiveColumn({ study, visitId }: { study: string; visitId: string 
           ) : (
             [...groupBy(rows, ({ timePoint }) => timePoint)].map(([timePoint, group]) => (
               <section key={timePoint} aria-label={timePoint} className="mt-3 border-t border-rule-soft pt-2">
-                <h3 className="text-sm font-semibold text-ink-soft">{timePoint}</h3>
+                <h3 className="text-sm font-semibold text-ink-soft">{timePoint.replaceAll('-', ' ')}</h3>
                 <dl>
                   {group.map((row) => (
                     <LiveRow key={row.key} row={row} />

@@ -1,3 +1,4 @@
+import type { RunSheetStep } from '#schemas/protocol/protocol.ts';
 import { PenMark, type PenState } from '../../../components/pen-mark.tsx';
 import { classNames } from '../../../components/class-names.ts';
 import { formatTime } from '../../../lib/format/dates.ts';
@@ -34,9 +35,7 @@ export function RunSheetRail({ clocks, entryStates, chosen, zone, onChoose }: Ru
                   <span className={begunAt === null ? 'sr-only' : 'font-semibold text-soot'}>
                     {begunAt === null ? 'not begun, ' : formatTime(new Date(begunAt).toISOString(), zone)}
                   </span>
-                  <span className="block text-sm text-ink-soft">
-                    {plannedWords(planned, step.anchor.kind)}
-                  </span>
+                  <span className="block text-sm text-ink-soft">+{planned} min</span>
                 </span>
                 <PenMark state={mark} />
                 <span>
@@ -44,7 +43,12 @@ export function RunSheetRail({ clocks, entryStates, chosen, zone, onChoose }: Ru
                     {step.label}
                   </span>
                   <span className="block text-sm text-ink-soft">
-                    {[word, lateness(actual, planned), performerWords(step.performedBy)]
+                    {[
+                      word,
+                      lateness(actual, planned),
+                      anchorWords(step, clocks),
+                      performerWords(step.performedBy),
+                    ]
                       .filter(Boolean)
                       .join(' · ')}
                   </span>
@@ -58,8 +62,11 @@ export function RunSheetRail({ clocks, entryStates, chosen, zone, onChoose }: Ru
   );
 }
 
-const plannedWords = (minute: number, anchor: string): string =>
-  anchor === 'visit-start' ? `+${minute} min` : `event +${minute}`;
+/** The event that a step's minutes count from, where it is not the beginning of the visit. */
+const anchorWords = ({ anchor }: RunSheetStep, clocks: readonly StepClock[]): string | null =>
+  anchor.kind === 'visit-start'
+    ? null
+    : `after: ${clocks.find(({ step }) => step.key === anchor.step)?.step.label ?? anchor.step}`;
 
 const performerWords = (performer: string): string | null =>
   performer === 'coordinator' ? null : performer.replaceAll('-', ' ');
