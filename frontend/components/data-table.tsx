@@ -89,7 +89,7 @@ export function DataTable<Row>(props: DataTableProps<Row>) {
         // A region that scrolls must be reachable by keyboard (WCAG 2.1.1).
         // eslint-disable-next-line jsx-a11y/no-noninteractive-tabindex
         tabIndex={0}
-        className={classNames('overflow-auto', virtual && 'max-h-[70dvh]')}
+        className={classNames('relative overflow-auto', virtual && 'max-h-[70dvh]')}
       >
         <table
           className="w-full border-separate border-spacing-0"

@@ -48,7 +48,7 @@ export function StateMark({ state, word, className }: { state: PenState; word: s
     <span
       data-state={state}
       className={classNames(
-        'inline-flex items-center gap-1.5 text-sm whitespace-nowrap',
+        'inline-flex items-center gap-1.5 text-sm whitespace-nowrap max-sm:whitespace-normal',
         state === 'asks' && 'text-arterial',
         className,
       )}

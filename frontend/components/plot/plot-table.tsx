@@ -21,7 +21,7 @@ export function PlotTable({
       // A region that scrolls must be reachable by keyboard (WCAG 2.1.1).
       // eslint-disable-next-line jsx-a11y/no-noninteractive-tabindex
       tabIndex={0}
-      className="max-h-[60dvh] overflow-auto"
+      className="relative max-h-[60dvh] overflow-auto"
     >
       <table className="w-full border-separate border-spacing-0 text-sm">
         <caption className="sr-only">{caption}, as a table</caption>
