@@ -41,7 +41,11 @@ function Desk({ study, visit }: { study: string; visit: VisitDto }) {
       <PageHead
         title={`${visit.participantCode} · ${visit.label}`}
         note="compared with its source"
-        actions={<Link to={`/studies/${study}/visits/${visit.id}`}>To the run sheet</Link>}
+        actions={
+          <Link to={`/studies/${study}/visits/${visit.id}`} className="link">
+            To the run sheet
+          </Link>
+        }
       />
       <div className="grid items-start gap-4 md:grid-cols-2">
         <div className="min-w-0 md:sticky md:top-4">
