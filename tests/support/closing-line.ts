@@ -16,7 +16,9 @@ export default class ClosingLine implements Reporter {
       }
     }
     process.on('exit', () => {
-      process.stdout.write(`\n${passed} passed, ${failed} failed${skipped > 0 ? `, ${skipped} skipped` : ''}\n`);
+      process.stdout.write(
+        `\n${passed} passed, ${failed} failed${skipped > 0 ? `, ${skipped} skipped` : ''}\n`,
+      );
     });
   }
 }
