@@ -1,5 +1,6 @@
 import type { Deps } from '#backend/http/deps.ts';
 import { PersonSchema } from '../accounts/person.entity.ts';
+import { ExportRequestSchema } from '../exports/export-request.entity.ts';
 import { cast, makePeople } from './cast.ts';
 import { seedReedgrip } from './reedgrip.ts';
 import { seedScreepath } from './screepath.ts';
@@ -12,7 +13,16 @@ export async function seedDemo(
   deps: Deps,
   report: (text: string) => void = () => undefined,
 ): Promise<boolean> {
-  if ((await deps.orm.em.fork().count(PersonSchema, {})) > 0) return false;
+  const em = deps.orm.em.fork();
+  if ((await em.count(PersonSchema, {})) > 0) {
+    // The export is the last thing that the demo makes.
+    if ((await em.count(ExportRequestSchema, {})) === 0) {
+      report(
+        'The demo looks unfinished: a start was stopped while making it. Remove the data folder for a whole one.',
+      );
+    }
+    return false;
+  }
   const people = await makePeople(deps);
   await cast(deps, people.get('ada.quill'), 'administrator', null);
   await seedReedgrip(deps, people, report);
