@@ -151,7 +151,7 @@ async function askQueries(
 }
 
 async function draftAmendment({ investigator }: DemoStudy): Promise<void> {
-  const draft = await investigator.does((em) => startProtocolDraft(em, { from: 'version' } as never));
+  const draft = await investigator.does((em) => startProtocolDraft(em, { from: 'newest' }));
   const amended = {
     ...reedgrip,
     safetyLimits: [

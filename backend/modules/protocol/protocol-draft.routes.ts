@@ -10,6 +10,7 @@ import {
   type ProtocolVerdictDto,
   type StartProtocolDraftBody,
 } from '#schemas/api/protocol.ts';
+import { accessible } from '#backend/database/row-filter.ts';
 import { currentStudyId } from '#backend/http/actor.ts';
 import type { Deps } from '#backend/http/deps.ts';
 import { etag, ifMatch } from '#backend/http/preconditions.ts';
@@ -19,11 +20,10 @@ import {
   discardProtocolDraft,
   newestProtocol,
   publishProtocol,
-  readProtocolDraft,
   saveProtocolDraft,
   startProtocolDraft,
 } from './protocol-draft.service.ts';
-import type { ProtocolDraft } from './protocol.entity.ts';
+import { ProtocolDraftSchema, type ProtocolDraft } from './protocol.entity.ts';
 import {
   presentProtocolDraft,
   presentProtocolVersion,
@@ -54,12 +54,15 @@ export function declareProtocolDraftRoutes({ route }: RouteTable, { orm }: Deps)
   route({
     method: 'get',
     path: draftPath,
-    summary: 'The draft as it was typed',
+    summary: 'The draft as it was typed; null while nobody has begun one',
     gate: ['read', 'ProtocolDraft'],
-    responds: { status: 200, body: protocolDraftDto },
+    responds: { status: 200, body: { anyOf: [{ type: 'null' }, protocolDraftDto] } },
     acts: null,
     handler: async (_request, response) => {
-      await answer(response, await readProtocolDraft(orm.em));
+      const where = accessible('read', 'ProtocolDraft');
+      const draft = where && (await orm.em.findOne(ProtocolDraftSchema, where));
+      if (draft === null) response.json(null);
+      else await answer(response, draft);
     },
   });
 

@@ -142,7 +142,7 @@ export async function publishProtocol(
 }
 
 /** The study's draft, for those who may read it. */
-export async function readProtocolDraft(em: EntityManager): Promise<ProtocolDraft> {
+async function readProtocolDraft(em: EntityManager): Promise<ProtocolDraft> {
   const draft = await em.findOne(ProtocolDraftSchema, { studyId: currentStudyId() });
   assertReadable('ProtocolDraft', draft, 'A draft of the protocol');
   return draft as ProtocolDraft;

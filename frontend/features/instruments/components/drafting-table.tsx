@@ -128,8 +128,10 @@ export function DraftingTable({ studyCode, draft, kept, onPublished }: DraftingT
                   onTrial={setTrial}
                 />
               </Guard>
+            ) : verdict === undefined ? (
+              <Skeleton lines={6} label="Being checked" />
             ) : (
-              <Skeleton lines={6} label="Waiting for a schema without problems" />
+              <p className="text-ink-soft">The form is drawn once the schema has no problems.</p>
             )}
           </div>
         </section>

@@ -7,7 +7,7 @@ import type {
   ProtocolVersionDto,
   ProtocolVersionSummaryDto,
 } from '#schemas/api/protocol.ts';
-import { api, ApiProblem } from '#frontend/lib/api.ts';
+import { api } from '#frontend/lib/api.ts';
 
 const keys = {
   all: (study: string) => ['protocol', study] as const,
@@ -47,14 +47,7 @@ export const protocolDifferencesQuery = (study: string, id: string, other: strin
 export const protocolDraftQuery = (study: string) =>
   queryOptions({
     queryKey: keys.draft(study),
-    queryFn: async ({ signal }) => {
-      try {
-        return await read<ProtocolDraftDto>(`/studies/${study}/protocol-draft`, signal);
-      } catch (error) {
-        if (error instanceof ApiProblem && error.status === 404) return null;
-        throw error;
-      }
-    },
+    queryFn: ({ signal }) => read<ProtocolDraftDto | null>(`/studies/${study}/protocol-draft`, signal),
   });
 
 export const protocolVerdictQuery = (study: string, text: string) =>

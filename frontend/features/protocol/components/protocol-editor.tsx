@@ -95,8 +95,10 @@ export function ProtocolEditor({ studyCode, draft, kept, onPublished }: Protocol
             </Guard>
           ) : query.error ? (
             <FailedState error={query.error} />
+          ) : verdict === undefined ? (
+            <Skeleton lines={8} label="Being checked" />
           ) : (
-            <Skeleton lines={8} label="Waiting for a protocol without problems" />
+            <p className="p-4 text-ink-soft">It reads here once the text has no problems.</p>
           )}
         </section>
       </div>
