@@ -16,10 +16,13 @@ import {
 import type { Action } from '#schemas/abilities/ability.ts';
 import type { ActKind } from '#schemas/vocabulary/act-kinds.ts';
 import type { Deps } from '#backend/http/deps.ts';
+import { currentStudyId } from '#backend/http/actor.ts';
+import { assertReadable } from '#backend/http/authorize.ts';
 import { idempotencyKey, type IdempotencyKey } from '#backend/http/idempotency.ts';
 import { etag, ifMatch } from '#backend/http/preconditions.ts';
 import { idParameter, type RouteTable } from '#backend/http/route.ts';
 import { accessible } from '#backend/database/row-filter.ts';
+import { ParticipantSchema } from '../participants/participant.entity.ts';
 import { EntrySchema } from './entry.entity.ts';
 import { entryHistory } from './entry-history.ts';
 import { presentEntry } from './entry.presenter.ts';
@@ -76,6 +79,11 @@ export function declareEntryRoutes({ route }: RouteTable, { orm: { em } }: Deps)
     acts: null,
     handler: async (request, response) => {
       const participantId = idParameter(request, 'participantId');
+      const participant = await em.findOne(ParticipantSchema, {
+        studyId: currentStudyId(),
+        id: participantId,
+      });
+      assertReadable('Participant', participant, 'This participant');
       const allowed = accessible('read', 'Entry');
       const rows =
         allowed === null

@@ -16,10 +16,13 @@ import {
   type StampStepBody,
 } from '#schemas/api/capture.ts';
 import { visitStates } from '#schemas/vocabulary/states.ts';
+import { currentStudyId } from '#backend/http/actor.ts';
+import { assertReadable } from '#backend/http/authorize.ts';
 import type { Deps } from '#backend/http/deps.ts';
 import { listOf, pageQuery } from '#backend/http/list.ts';
 import { etag, ifMatch } from '#backend/http/preconditions.ts';
 import { idParameter, type RouteTable } from '#backend/http/route.ts';
+import { ParticipantSchema } from '../participants/participant.entity.ts';
 import { liveQuantities } from './live-quantities.ts';
 import type { Visit } from './visit.entity.ts';
 import { listVisits, presentVisits } from './visit-list.ts';
@@ -73,6 +76,8 @@ export function declareVisitRoutes({ route }: RouteTable, { orm: { em } }: Deps)
     acts: null,
     handler: async (request, response) => {
       const participant = idParameter(request, 'participantId');
+      const known = await em.findOne(ParticipantSchema, { studyId: currentStudyId(), id: participant });
+      assertReadable('Participant', known, 'This participant');
       response.json(await listVisits(em, { participant, limit: '100' }));
     },
   });
