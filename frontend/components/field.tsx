@@ -78,4 +78,4 @@ export function FieldError({ id, children }: { id?: string; children: ReactNode 
 
 /** The look of everything one types into. */
 export const controlLook =
-  'w-full rounded border border-edge bg-paper px-3 py-1.5 text-ink read-only:bg-bone disabled:bg-bone disabled:text-ink-soft aria-invalid:border-2 aria-invalid:border-arterial';
+  'w-full rounded border border-edge bg-paper px-3 py-1.5 text-ink [&:is(input,textarea):read-only]:bg-bone disabled:bg-bone disabled:text-ink-soft aria-invalid:border-2 aria-invalid:border-arterial';

@@ -61,7 +61,7 @@ export function DraftingTable({ studyCode, draft, kept, onPublished }: DraftingT
         {(draft.changed || kept.unsaved) && <Button onClick={() => setDialog('discard')}>Discard</Button>}
         <Button
           variant="primary"
-          disabled={!publishable}
+          disabled={!publishable || kept.theirs !== undefined}
           aria-describedby="publish-why"
           onClick={() => setDialog('publish')}
         >

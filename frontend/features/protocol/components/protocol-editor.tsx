@@ -59,7 +59,7 @@ export function ProtocolEditor({ studyCode, draft, kept, onPublished }: Protocol
         {(draft.changed || kept.unsaved) && <Button onClick={() => setDialog('discard')}>Discard</Button>}
         <Button
           variant="primary"
-          disabled={!current || !verdict.publishable}
+          disabled={!current || !verdict.publishable || kept.theirs !== undefined}
           aria-describedby="publish-why"
           onClick={() => setDialog('publish')}
         >

@@ -2,7 +2,7 @@ import { Link } from 'react-router-dom';
 import type { ProtocolVersionDto } from '#schemas/api/protocol.ts';
 import type { RunSheetStep, VisitType } from '#schemas/protocol/protocol.ts';
 import { withBlocksWrittenOut } from '#schemas/protocol/run-sheet.ts';
-import { cautionTexts } from '#schemas/vocabulary/caution-texts.ts';
+import { cautionClosing, cautionTexts } from '#schemas/vocabulary/caution-texts.ts';
 import { Caution } from '#frontend/components/caution.tsx';
 import { anchoredSteps, holdPointInWords, performerWords, windowInWords } from '../model/protocol-words.ts';
 
@@ -47,6 +47,9 @@ export function RunSheetTimeline({ visitType, instruments, instrumentPath }: Run
           </ol>
         </div>
       ))}
+      {runSheet.some(({ caution }) => caution !== undefined) && (
+        <p className="text-sm text-ink-soft">{cautionClosing}</p>
+      )}
       {runSheet.length === 0 && <p className="text-ink-soft">No step yet.</p>}
     </section>
   );

@@ -47,8 +47,8 @@ describe('a run sheet in words', () => {
     const groups = anchoredSteps(runSheet);
     expect(groups.slice(0, 3).map(({ from, steps }) => [from, steps[0]?.key])).toEqual([
       ['From the start of the visit', 'checks'],
-      ['From “Rest began”', 'pressures'],
-      ['From “Rest recorded”', 'exercise-before'],
+      ['From “Rest began” of Rest, supine', 'pressures'],
+      ['From “Rest recorded” of Doppler at rest, before the juice', 'exercise-before'],
     ]);
     expect(groups.flatMap(({ steps }) => steps.map(({ key }) => key))).toEqual(
       runSheet.map(({ key }) => key),

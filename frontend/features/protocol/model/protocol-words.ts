@@ -55,5 +55,8 @@ export function anchoredSteps(steps: readonly RunSheetStep[]): AnchoredSteps[] {
 function anchorInWords({ anchor }: RunSheetStep, steps: readonly RunSheetStep[]): string {
   if (anchor.kind === 'visit-start') return 'From the start of the visit';
   const step = steps.find(({ key }) => key === anchor.step);
-  return `From “${step?.event ?? step?.label ?? anchor.step}”`;
+  // Several steps may stamp an event of one name: which one is meant is said with its step.
+  return step?.event === undefined
+    ? `From “${step?.label ?? anchor.step}”`
+    : `From “${step.event}” of ${step.label}`;
 }
