@@ -9,7 +9,6 @@ export const signInBody = {
   required: ['email', 'password'],
   properties: { email: { type: 'string', maxLength: 254 }, password: { type: 'string', maxLength: 1024 } },
 } as const;
-export type SignInBody = FromSchema<typeof signInBody>;
 
 export const actingBody = {
   ...object,
@@ -18,7 +17,7 @@ export const actingBody = {
 } as const;
 export type ActingBody = FromSchema<typeof actingBody>;
 
-export const membershipDto = {
+const membershipDto = {
   ...object,
   required: ['id', 'studyCode', 'studyName', 'role', 'siteIds', 'unblinded'],
   properties: {

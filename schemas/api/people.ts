@@ -14,7 +14,7 @@ const siteIds = {
 const { reason } = reasonBody.properties;
 
 export const personStates = ['invited', 'active', 'deactivated'] as const;
-export const membershipStates = ['active', 'revoked'] as const;
+const membershipStates = ['active', 'revoked'] as const;
 
 export const invitePersonBody = {
   ...object,

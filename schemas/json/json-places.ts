@@ -5,13 +5,13 @@ export interface Span {
 }
 
 /** Where a value stands, and for a member of an object also its name. */
-export interface Place {
+interface Place {
   value: Span;
   name?: Span;
 }
 
 /** A place at which the text is no JSON, or not the JSON its author means. */
-export interface TextProblem extends Span {
+interface TextProblem extends Span {
   message: string;
 }
 

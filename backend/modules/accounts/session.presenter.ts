@@ -10,7 +10,7 @@ import { StudySchema, type Study } from '../studies/study.entity.ts';
 import { MembershipSchema, type Membership } from './membership.entity.ts';
 import { PersonSchema } from './person.entity.ts';
 
-export const presentMembership = (membership: Membership, study: Study | undefined): MembershipDto => ({
+const presentMembership = (membership: Membership, study: Study | undefined): MembershipDto => ({
   id: membership.id,
   studyCode: study?.code ?? null,
   studyName: study?.name ?? null,

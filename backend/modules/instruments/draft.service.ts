@@ -96,7 +96,7 @@ export const baseOf = (
     ? Promise.resolve(null)
     : em.findOne(InstrumentVersionSchema, { studyId, key, version: baseVersion });
 
-export const newestVersion = (
+const newestVersion = (
   em: EntityManager,
   studyId: string,
   key: string,
