@@ -96,11 +96,7 @@ export const baseOf = (
     ? Promise.resolve(null)
     : em.findOne(InstrumentVersionSchema, { studyId, key, version: baseVersion });
 
-const newestVersion = (
-  em: EntityManager,
-  studyId: string,
-  key: string,
-): Promise<InstrumentVersion | null> =>
+const newestVersion = (em: EntityManager, studyId: string, key: string): Promise<InstrumentVersion | null> =>
   em.findOne(InstrumentVersionSchema, { studyId, key }, { orderBy: { version: 'desc' } });
 
 async function beginning(
