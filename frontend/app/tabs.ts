@@ -32,7 +32,7 @@ export const studyTabs: readonly Tab[] = [
 
 /** The administrator's tabs, outside of any study. */
 export const administrationTabs: readonly Tab[] = [
-  { label: 'People', path: 'people', ability: ['manage', 'Person'], key: 'p' },
-  { label: 'Studies', path: 'studies', ability: ['manage', 'Study'], key: 's' },
+  { label: 'People', path: 'people', ability: ['administer', 'Person'], key: 'p' },
+  { label: 'Studies', path: 'studies', ability: ['administer', 'Study'], key: 's' },
   { label: 'System trail', path: 'audit', ability: ['read', 'AuditEvent'], key: 'a' },
 ];

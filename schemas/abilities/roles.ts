@@ -147,7 +147,7 @@ const monitor = (member: MembershipFacts): AppRule[] => {
 };
 
 const administrator = (_member: MembershipFacts): AppRule[] => [
-  can(['read', 'create', 'update', 'manage'], ['Study', 'Site', 'Person', 'Membership']),
+  can(['read', 'create', 'update', 'administer'], ['Study', 'Site', 'Person', 'Membership']),
   can('read', 'AuditEvent', { area: 'system' }),
 ];
 

@@ -27,7 +27,7 @@ export const actions = [
   'download',
   'run',
   'extract',
-  'manage',
+  'administer',
 ] as const;
 export type Action = (typeof actions)[number];
 

@@ -40,7 +40,7 @@ export function declareMembershipRoutes({ route }: RouteTable, { orm }: Deps): v
     method: 'get',
     path: '/administration/studies/:studyId/members',
     summary: 'Members of a study, for the administrator',
-    gate: ['manage', 'Membership'],
+    gate: ['administer', 'Membership'],
     responds: { status: 200, body: membersDto },
     acts: null,
     handler: async (request, response) => {

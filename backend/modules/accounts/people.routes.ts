@@ -23,7 +23,7 @@ export function declarePeopleRoutes({ route }: RouteTable, { orm }: Deps): void 
     method: 'get',
     path: '/people',
     summary: 'People by name, with the memberships they hold',
-    gate: ['manage', 'Person'],
+    gate: ['administer', 'Person'],
     query: peopleQuery,
     responds: { status: 200, body: listOf(personDto) },
     acts: null,
@@ -51,7 +51,7 @@ export function declarePeopleRoutes({ route }: RouteTable, { orm }: Deps): void 
     method: 'get',
     path: '/people/:personId',
     summary: 'One person with all memberships, those revoked too',
-    gate: ['manage', 'Person'],
+    gate: ['administer', 'Person'],
     responds: { status: 200, body: personDto },
     acts: null,
     handler: async (request, response) => {

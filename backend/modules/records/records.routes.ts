@@ -172,7 +172,7 @@ export function declareRecordRoutes({ route }: RouteTable, { orm: { em }, settin
     method: 'get',
     path: '/audit-events/check',
     summary: 'Follow the system’s chain',
-    gate: ['manage', 'Person'],
+    gate: ['administer', 'Person'],
     responds: { status: 200, body: anyObject },
     acts: null,
     handler: async (_request, response) => {

@@ -37,7 +37,7 @@ export function declareStudyRoutes({ route }: RouteTable, { orm }: Deps): void {
     method: 'get',
     path: '/administration/studies',
     summary: 'Every study by code',
-    gate: ['manage', 'Study'],
+    gate: ['administer', 'Study'],
     query: { type: 'object', additionalProperties: false, properties: pageQuery },
     responds: { status: 200, body: listOf(studyDto) },
     acts: null,
@@ -65,7 +65,7 @@ export function declareStudyRoutes({ route }: RouteTable, { orm }: Deps): void {
     method: 'get',
     path: '/administration/studies/:studyId',
     summary: 'One study with its sites',
-    gate: ['manage', 'Study'],
+    gate: ['administer', 'Study'],
     responds: { status: 200, body: studyDto },
     acts: null,
     handler: async (request, response) => {
