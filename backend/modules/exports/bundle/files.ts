@@ -5,6 +5,7 @@ import type { StudyPlan } from '#analysis/study/study-plan.ts';
 import { sha256 } from '#backend/database/trail/canonical.ts';
 import { ExportCodes } from './codes.ts';
 import type { Collected, InstrumentTable } from './collect.ts';
+import type { BundleFacts } from './facts.ts';
 import { csvText, type Cell } from './csv.ts';
 import { readmeText } from './readme.ts';
 import { rScript } from './r-script.ts';
@@ -13,16 +14,6 @@ import { treatmentWords } from './treatment.ts';
 export interface BundleFile {
   name: string;
   text: string;
-}
-
-export interface BundleFacts {
-  exportNumber: number;
-  method: string;
-  reportHash: string;
-  cut: { number: number; sha256: string };
-  chainHead: { sequence: number; hash: string };
-  run: { number: number; planHash: string; resultSha256: string; engineVersion: string; seed: number };
-  productVersion: string;
 }
 
 /** Everything that leaves, each file whole; the manifest comes last and seals the others. */

@@ -1,5 +1,5 @@
 import type { Collected } from './collect.ts';
-import type { BundleFacts } from './files.ts';
+import type { BundleFacts } from './facts.ts';
 
 /** What is in the bundle, how to re-run it, and what it must not be taken for. */
 export function readmeText({ head, participants, tables, leftOut }: Collected, facts: BundleFacts): string {
