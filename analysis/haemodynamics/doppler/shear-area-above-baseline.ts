@@ -9,7 +9,7 @@ import { requireFinite } from '../../units/require.ts';
  * Formula  ∫ (γ − γ_base) dt, trapezoidal
  * Units    t s, γ /s, result 1
  * Shape    two series of one length, at least 2 points
- * Domain   times strictly rising; γ_base ≥ 0
+ * Domain   times strictly rising; shear rates and γ_base finite, below 0 where flow is retrograde
  * Errors   DomainError naming the argument; never NaN
  * Assumes  the series ends at the time of peak diameter
  * Source   definition; reference case hd-111
